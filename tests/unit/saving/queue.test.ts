@@ -1,0 +1,71 @@
+import fc from 'fast-check'
+import { describe, expect, it } from 'vitest'
+import { acknowledge, batchOf, emptyQueue, enqueue, rebaseQueue, retryDelay, saveSentence, sendTime, startSending, type SaveQueue } from '../../../shared/editor/saving'
+
+const step = (label: string) => ({ label, edits: [] })
+const labels = (queue: SaveQueue) => queue.unsent.map(each => each.label)
+
+describe('the queue of unsent work', () => {
+  it('gives the batch without an answer again as it was, though more was typed since', () => {
+    const sent = startSending(enqueue(emptyQueue('tab', 7), step('a')))
+    const later = startSending(enqueue(sent, step('b')))
+    expect(batchOf(later)).toEqual({ clientId: 'tab', seq: 1, base: 7, transactions: [step('a')] })
+  })
+
+  it('goes on from the acknowledged revision with the next sequence', () => {
+    const first = enqueue(startSending(enqueue(emptyQueue('tab', 7), step('a'))), step('b'))
+    expect(batchOf(startSending(acknowledge(first, 8)))).toEqual({ clientId: 'tab', seq: 2, base: 8, transactions: [step('b')] })
+  })
+
+  it('never uses a sequence again after a batch was turned away', () => {
+    const refused = startSending(enqueue(emptyQueue('tab', 7), step('a')))
+    expect(batchOf(startSending(rebaseQueue(refused, 12, [step('a, moved')])))).toEqual({ clientId: 'tab', seq: 2, base: 12, transactions: [step('a, moved')] })
+  })
+
+  it('loses nothing and sends nothing twice, whatever the order of typing, sending and answers', () => {
+    const act = fc.constantFrom('type', 'send', 'answer', 'limit')
+    fc.assert(fc.property(fc.array(act, { maxLength: 60 }), (acts) => {
+      let queue = emptyQueue('tab', 0)
+      const typed: string[] = []
+      const arrived: string[] = []
+      const answer = () => {
+        const batch = batchOf(queue)
+        if (!batch) return
+        arrived.push(...batch.transactions.map(each => each.label))
+        queue = acknowledge(queue, batch.base + 1)
+      }
+      for (const each of acts) {
+        if (each === 'type') { typed.push(`${typed.length}`); queue = enqueue(queue, step(typed.at(-1)!)) }
+        if (each === 'send') queue = startSending(queue)
+        if (each === 'limit') queue = startSending(queue, 2)
+        if (each === 'answer') answer()
+      }
+      expect([...arrived, ...labels(queue)]).toEqual(typed)
+      expect(new Set(queue.unsent.map(each => each.number)).size).toBe(queue.unsent.length)
+    }))
+  })
+})
+
+describe('times', () => {
+  it('waits 600 ms after the last key and never longer than 3 s after the first', () => {
+    expect(sendTime(0, 0)).toBe(600)
+    expect(sendTime(0, 1500)).toBe(2100)
+    expect(sendTime(0, 2900)).toBe(3000)
+  })
+
+  it('waits longer after every failure, up to half a minute, and not always the same', () => {
+    expect([1, 2, 3, 9].map(failures => retryDelay(failures, 0))).toEqual([500, 1000, 2000, 15_000])
+    expect([1, 2, 3, 9].map(failures => retryDelay(failures, 1))).toEqual([1000, 2000, 4000, 30_000])
+  })
+})
+
+describe('what the header says', () => {
+  const clock = () => '14:02'
+  it.each([
+    [{ kind: 'saved', at: 1 }, 'Saved 14:02'],
+    [{ kind: 'saved', at: null }, 'Saved'],
+    [{ kind: 'offline', unsent: 1, kept: true }, 'Offline, 1 edit kept on this device'],
+    [{ kind: 'offline', unsent: 12, kept: false }, 'Offline, 12 edits only in this tab: keep it open'],
+    [{ kind: 'failed', unsent: 3, reason: 'the server is busy.' }, 'Not saved, 3 edits kept: the server is busy.'],
+  ] as const)('%o', (status, sentence) => expect(saveSentence(status, clock)).toBe(sentence))
+})
