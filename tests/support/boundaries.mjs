@@ -5,7 +5,7 @@ const allowed = {
   'shared/tunings': ['shared/score'],
   'shared/formats': ['shared/score'],
   'shared/permissions': ['shared/score'],
-  'shared/schemas': ['shared/score', 'shared/edits'],
+  'shared/schemas': ['shared/score', 'shared/edits', 'shared/permissions'],
   'shared/ring': ['shared/score', 'shared/tunings'],
   'shared/sound': ['shared/score', 'shared/tunings', 'shared/ring'],
   'shared/engraving': ['shared/score', 'shared/tunings', 'shared/ring'],

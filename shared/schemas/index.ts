@@ -1,0 +1,4 @@
+export * from './account'
+export * from './arrangement'
+export * from './edit'
+export * from './problem'
