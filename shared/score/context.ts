@@ -13,7 +13,7 @@ export const DEFAULT_KEY: Key = { fifths: 0, mode: 'major' }
 export const DEFAULT_TEMPO: Tempo = { base: 4, dots: 0, perMinute: 80 }
 
 const first = new WeakMap<Head, Context>()
-const after = new WeakMap<Bar, { before: Context, context: Context }>()
+const after = new WeakMap<Context, Context[]>()
 const whole = new WeakMap<readonly Bar[], { head: Head, contexts: readonly Context[] }>()
 
 function initial(head: Head): Context {
@@ -22,18 +22,21 @@ function initial(head: Head): Context {
   return context
 }
 
-/** The context inside `bar`. A bar that changes nothing shares its predecessor's very object, so that drawings can compare by identity. */
+/** Changes remembered behind one context; a piece in progress has one or two, undo and redo a few more. */
+const REMEMBERED = 8
+
+/**
+ * The context inside `bar`. Equal changes behind an equal context give the very same object, so that drawings can compare by
+ * identity: notes typed in a bar which states a meter leave the contexts of all bars behind it as they were.
+ */
 function step(before: Context, bar: Bar): Context {
-  if (!bar.meter && !bar.key && !bar.tempo) return before
-  const known = after.get(bar)
-  if (known?.before === before) return known.context
-  const context = {
-    head: before.head,
-    meter: bar.meter ?? before.meter,
-    key: bar.key ?? before.key,
-    tempo: bar.tempo ?? before.tempo,
-  }
-  after.set(bar, { before, context })
+  const { meter = before.meter, key = before.key, tempo = before.tempo } = bar
+  if (meter === before.meter && key === before.key && tempo === before.tempo) return before
+  const known = after.get(before) ?? []
+  const same = known.find(each => each.meter === meter && each.key === key && each.tempo === tempo)
+  if (same) return same
+  const context = { head: before.head, meter, key, tempo }
+  after.set(before, [context, ...known].slice(0, REMEMBERED))
   return context
 }
 
