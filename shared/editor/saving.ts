@@ -48,6 +48,13 @@ export function startSending(queue: SaveQueue, limit = BATCH_LIMIT): SaveQueue {
   }
 }
 
+/** How many of the first unsent fit into a request of so many bytes, counted as UTF-16 units of their JSON with room to spare. */
+export function fittingCount(unsent: readonly Unsent[], bytes: number): number {
+  let left = bytes
+  const over = unsent.findIndex(each => (left -= 2 * JSON.stringify(each).length) < 0)
+  return over < 0 ? unsent.length : over
+}
+
 /** The batch on its way; null when there is none. */
 export const batchOf = ({ clientId, sending, unsent }: SaveQueue): Batch | null => sending && {
   clientId,
@@ -80,28 +87,37 @@ export const RETRY_MS = { first: 1000, longest: 30_000 } as const
 export const retryDelay = (failures: number, random: number): number =>
   Math.min(RETRY_MS.longest, RETRY_MS.first * 2 ** (failures - 1)) * (0.5 + random / 2)
 
-/** How the work stands, as the header says it. `unsent` counts transactions that the server has not acknowledged. */
-export type SaveStatus =
-  | { readonly kind: 'saved', readonly at: number | null }
-  | { readonly kind: 'saving' }
-  | { readonly kind: 'offline', readonly unsent: number, readonly kept: boolean }
-  | { readonly kind: 'failed', readonly unsent: number, readonly reason: string }
-  | { readonly kind: 'signed-out', readonly unsent: number }
-  | { readonly kind: 'refused', readonly unsent: number, readonly reason: string }
+/** What keeps work from being saved. Being offline and a server in trouble pass by themselves; the others need a person. */
+export type Hindrance =
+  | { readonly kind: 'offline' }
+  | { readonly kind: 'trouble', readonly reason: string }
+  | { readonly kind: 'forbidden', readonly reason: string }
+  | { readonly kind: 'signed-out' }
+  | { readonly kind: 'refused', readonly reason: string }
+
+export const isPassing = (hindrance: Hindrance | null): boolean => hindrance === null || hindrance.kind === 'offline' || hindrance.kind === 'trouble'
+
+/** How the work stands. */
+export interface SaveStatus {
+  /** Transactions that the server has not acknowledged. */
+  readonly unsent: number
+  /** Whether they are in the browser's own database, and so survive a closed tab. */
+  readonly kept: boolean
+  readonly hindrance: Hindrance | null
+  /** When the server last acknowledged something (ms); null: not since the arrangement was opened. */
+  readonly savedAt: number | null
+}
 
 const edits = (count: number): string => (count === 1 ? '1 edit' : `${count} edits`)
 
 /** One line for the header.
  * @param clock turns milliseconds into a time of day */
-export function saveSentence(status: SaveStatus, clock: (time: number) => string): string {
-  switch (status.kind) {
-    case 'saved': return status.at === null ? 'Saved' : `Saved ${clock(status.at)}`
-    case 'saving': return 'Saving …'
-    case 'offline': return status.kept
-      ? `Offline, ${edits(status.unsent)} kept on this device`
-      : `Offline, ${edits(status.unsent)} only in this tab: keep it open`
-    case 'failed': return `Not saved, ${edits(status.unsent)} kept: ${status.reason}`
-    case 'signed-out': return `Signed out, ${edits(status.unsent)} kept on this device`
-    case 'refused': return `Not saved: ${status.reason}`
+export function saveSentence({ unsent, kept, hindrance, savedAt }: SaveStatus, clock: (time: number) => string): string {
+  const where = kept ? `${edits(unsent)} kept on this device` : `${edits(unsent)} only in this tab: keep it open`
+  switch (hindrance?.kind) {
+    case 'offline': return unsent ? `Offline, ${where}` : 'Offline, all saved'
+    case 'signed-out': return `Signed out, ${where}`
+    case 'trouble': case 'forbidden': case 'refused': return unsent ? `Not saved, ${where}` : 'Not connected'
+    default: return unsent ? 'Saving …' : savedAt === null ? 'Saved' : `Saved ${clock(savedAt)}`
   }
 }

@@ -1,4 +1,4 @@
-import type { Score, VoiceName, Length } from '../score/types'
+import type { Bar, Length, Score, ScoreEvent, Tuplet, VoiceName } from '../score/types'
 import type { Edit } from '../edits'
 
 /** Where the next key acts: a string of an event, or the open end of a voice. Never an offset. */
@@ -16,7 +16,15 @@ export const END = 'end'
 export interface Selection {
   readonly cursor: Cursor
   readonly anchor: Cursor | null
+  /** The bars from anchor to cursor are meant whole, with all their voices. */
+  readonly whole?: true
 }
+
+/** Events of one voice in one bar, as copied. */
+export interface EventRun { readonly events: readonly ScoreEvent[], readonly tuplets: readonly Tuplet[] }
+
+/** What was cut or copied: whole bars (the first states its meter, key and tempo), or one run of events for each bar they came from. */
+export type Clip = { readonly kind: 'bars', readonly bars: readonly Bar[] } | { readonly kind: 'events', readonly runs: readonly EventRun[] }
 
 /** What is remembered of a fret being typed, so that 1 then 2 is 12. Any other act clears it. */
 export interface TypedFret { readonly noteId: string, readonly digits: string }
@@ -43,6 +51,7 @@ export interface EditorState {
   readonly entry: Pick<Length, 'base' | 'dots'>
   readonly typed: TypedFret | null
   readonly history: History
+  readonly clip: Clip | null
   /** One sentence for the status line: why the last key did nothing, or what to know of it. */
   readonly notice: string | null
 }
@@ -59,6 +68,7 @@ export function openEditor(score: Score): EditorState {
     entry: { base: 4, dots: 0 },
     typed: null,
     history: { undo: [], redo: [] },
+    clip: null,
     notice: null,
   }
 }

@@ -11,6 +11,7 @@ export interface Transaction {
   /** Left out: a fret being typed is finished. */
   readonly typed?: EditorState['typed']
   readonly notice?: string
+  readonly clip?: EditorState['clip']
   /**
    * record: an undo step of its own (the default where there are edits). merge: joins the step before.
    * undo, redo: made by history itself. skip: not to be undone (what came from someone else).
@@ -28,6 +29,7 @@ export function applyTransaction(state: EditorState, transaction: Transaction, t
     selection: transaction.selection ?? state.selection,
     entry: transaction.entry ?? state.entry,
     typed: transaction.typed ?? null,
+    clip: transaction.clip ?? state.clip,
     notice: transaction.notice ?? null,
     history: edits.length ? remember(state, transaction, { label: transaction.label, edits: applied.inverses, selection: state.selection, time }) : state.history,
   }

@@ -1,0 +1,4 @@
+export * from './ids'
+export * from './place'
+export * from './state'
+export * from './transaction'
