@@ -1,9 +1,7 @@
 import { z } from 'zod'
 import { text } from '../score/schema'
 import type { AccountRole } from '../permissions'
-
-/** Counted in characters. No rule on the make-up of a password (NIST SP 800-63B, 5.1.1.2: at least 8 characters, no composition rules). */
-export const PASSWORD_LENGTH = { least: 10, most: 200 } as const
+import { PASSWORD_LENGTH } from './limits'
 
 const emailSchema = z.string().trim().max(254).pipe(z.email('is no e-mail address')).transform(value => value.toLowerCase())
 const passwordSchema = text(PASSWORD_LENGTH.most).min(PASSWORD_LENGTH.least, `needs at least ${PASSWORD_LENGTH.least} characters`)

@@ -1,4 +1,5 @@
 export * from './account'
 export * from './arrangement'
 export * from './edit'
+export * from './limits'
 export * from './problem'
