@@ -1,6 +1,6 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { acknowledge, batchOf, emptyQueue, enqueue, rebaseQueue, retryDelay, saveSentence, sendTime, startSending, type SaveQueue } from '../../../shared/editor/saving'
+import { acknowledge, batchOf, emptyQueue, enqueue, fittingCount, rebaseQueue, retryDelay, saveSentence, sendTime, startSending, type SaveQueue } from '../../../shared/editor/saving'
 
 const step = (label: string) => ({ label, edits: [] })
 const labels = (queue: SaveQueue) => queue.unsent.map(each => each.label)
@@ -60,12 +60,20 @@ describe('times', () => {
 })
 
 describe('what the header says', () => {
-  const clock = () => '14:02'
+  const clean = { unsent: 0, kept: true, hindrance: null, savedAt: null }
   it.each([
-    [{ kind: 'saved', at: 1 }, 'Saved 14:02'],
-    [{ kind: 'saved', at: null }, 'Saved'],
-    [{ kind: 'offline', unsent: 1, kept: true }, 'Offline, 1 edit kept on this device'],
-    [{ kind: 'offline', unsent: 12, kept: false }, 'Offline, 12 edits only in this tab: keep it open'],
-    [{ kind: 'failed', unsent: 3, reason: 'the server is busy.' }, 'Not saved, 3 edits kept: the server is busy.'],
-  ] as const)('%o', (status, sentence) => expect(saveSentence(status, clock)).toBe(sentence))
+    [clean, 'Saved'],
+    [{ ...clean, savedAt: 1 }, 'Saved 14:02'],
+    [{ ...clean, unsent: 2 }, 'Saving …'],
+    [{ ...clean, unsent: 1, hindrance: { kind: 'offline' } }, 'Offline, 1 edit kept on this device'],
+    [{ ...clean, unsent: 12, kept: false, hindrance: { kind: 'offline' } }, 'Offline, 12 edits only in this tab: keep it open'],
+    [{ ...clean, unsent: 3, hindrance: { kind: 'trouble', reason: 'busy' } }, 'Not saved, 3 edits kept on this device'],
+    [{ ...clean, unsent: 3, hindrance: { kind: 'signed-out' } }, 'Signed out, 3 edits kept on this device'],
+  ] as const)('%o', (status, sentence) => expect(saveSentence(status, () => '14:02')).toBe(sentence))
+})
+
+describe('what a closing page can still send', () => {
+  const queue = ['a', 'b', 'c'].reduce((all, label) => enqueue(all, step(label)), emptyQueue('tab', 0))
+  const one = JSON.stringify(queue.unsent[0]).length * 2
+  it.each([[0, 0], [one - 1, 0], [one, 1], [one * 2.5, 2], [one * 9, 3]])('%d bytes hold %d', (bytes, count) => expect(fittingCount(queue.unsent, bytes)).toBe(count))
 })

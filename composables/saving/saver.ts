@@ -1,0 +1,228 @@
+import { applyEdits, isRefused } from '#shared/edits'
+import {
+  acknowledge, batchOf, enqueue, fittingCount, isPassing, rebaseQueue, retryDelay, sendTime, startSending,
+  type Hindrance, type LoggedTransaction, type SaveQueue, type SaveStatus, type Unsent,
+} from '#shared/editor/saving'
+import type { LoggedBatch } from '#shared/schemas'
+import type { Score } from '#shared/score/types'
+import { rebaseOnto, type Reading } from './rebasing'
+import type { Failure, PostAnswer, Transport } from './transport'
+import type { UnsentStore } from './unsentStore'
+
+/** Time as saving sees it, so that tests never sleep. */
+export interface Clock {
+  /** Milliseconds. */
+  readonly now: () => number
+  /** Calls back after `ms`; the answer takes it back. */
+  readonly after: (ms: number, call: () => void) => () => void
+  /** From 0 up to 1. */
+  readonly random: () => number
+  /** Calls back when the frame in hand is on the screen. */
+  readonly afterPaint: (call: () => void) => void
+}
+
+export interface SaverOptions {
+  readonly queue: SaveQueue
+  /** The arrangement as saved at `queue.base`. */
+  readonly saved: Score
+  readonly store: UnsentStore
+  readonly transport: Transport
+  readonly clock: Clock
+  readonly onStatus: (status: SaveStatus) => void
+  /** What others saved has come in below the unsent work: the arrangement as it stands now, and the readings set aside. */
+  readonly onRebased: (score: Score, readings: readonly Reading[]) => void
+  /** The server has a new revision of ours. */
+  readonly onSaved: (revision: number) => void
+  /** The whole arrangement as it stands, as a file: kept where the server refuses it. */
+  readonly copy: () => string
+}
+
+export interface Saver {
+  record: (transaction: LoggedTransaction) => void
+  /** Sends what there is without waiting for a pause or the next try; also after a person has seen to what hindered it. */
+  now: () => Promise<void>
+  /** Fetches what others saved meanwhile. */
+  catchUp: () => Promise<void>
+  /** The network went or came, as the browser says. */
+  network: (online: boolean) => void
+  /** The page is being closed or hidden: what fits goes out in a request that outlives it. */
+  leave: () => void
+  stop: () => void
+}
+
+/** A write to the browser's database that takes longer than this (ms) does not hold up the sending. */
+const WRITE_PATIENCE = 1000
+/** Browsers take 64 KiB from a page that is closing (Fetch standard, keepalive); the rest is for the frame around it. */
+const LEAVING_BYTES = 60_000
+
+/**
+ * Sends one tab's work: every transaction is kept on the device, goes out after a pause in the typing, and stays until the server
+ * has answered for it. One request at a time.
+ */
+export function createSaver(options: SaverOptions): Saver {
+  const { store, transport, clock } = options
+  let { queue, saved } = options
+  let unwritten: readonly Unsent[] = []
+  let writes: Promise<unknown> = Promise.resolve()
+  let kept = true
+  let busy = false
+  let failures = 0
+  let hindrance: Hindrance | null = null
+  let savedAt: number | null = null
+  let oldest: number | null = queue.unsent.length ? clock.now() : null
+  let newest = clock.now()
+  let cancelTimer = () => {}
+  let shown = ''
+
+  function publish(): void {
+    // While the typing goes well the count is nobody's concern, and every key would redraw the header.
+    const status: SaveStatus = { unsent: hindrance || !kept ? queue.unsent.length : Math.min(1, queue.unsent.length), kept, hindrance, savedAt }
+    const text = JSON.stringify(status)
+    if (text !== shown) options.onStatus(status)
+    shown = text
+  }
+
+  /** Writes go in the order of the calls; the header learns whether they were kept. */
+  function keep(write: () => Promise<unknown>): Promise<unknown> {
+    writes = writes.then(write).then(() => { kept = true }, () => { kept = false }).then(publish)
+    return Promise.race([writes, new Promise<void>((resolve) => { clock.after(WRITE_PATIENCE, resolve) })])
+  }
+
+  function keepQueue(): Promise<unknown> {
+    const [head, transactions] = [queue, unwritten]
+    unwritten = []
+    return keep(() => store.append(head, transactions))
+  }
+
+  function schedule(ms: number): void {
+    cancelTimer()
+    cancelTimer = clock.after(Math.max(0, ms), () => void send())
+  }
+
+  /** The next sending: after the pause, or when the next try after a failure is due, which typing does not bring forward. */
+  function scheduleNext(): void {
+    if (busy || failures || !isPassing(hindrance) || oldest === null) return
+    schedule(sendTime(oldest, newest) - clock.now())
+  }
+
+  async function send(): Promise<void> {
+    if (busy || !isPassing(hindrance) || !queue.unsent.length) return
+    cancelTimer()
+    busy = true
+    queue = startSending(queue)
+    publish()
+    await keepQueue()
+    const batch = batchOf(queue)
+    if (batch) settle(await transport.post(batch).catch((): Failure => ({ kind: 'unreachable' })))
+    busy = false
+    publish()
+    scheduleNext()
+  }
+
+  function settle(answer: PostAnswer): void {
+    switch (answer.kind) {
+      case 'accepted': return accept(answer.revision)
+      case 'stale': return takeMissed(answer.revision, answer.missed)
+      default: return hinder(answer)
+    }
+  }
+
+  function accept(revision: number): void {
+    const sent = queue.unsent.slice(0, queue.sending?.count ?? 0)
+    const applied = applyEdits(saved, sent.flatMap(each => each.edits))
+    if (!isRefused(applied)) saved = applied.score
+    queue = acknowledge(queue, revision)
+    failures = 0
+    hindrance = null
+    savedAt = clock.now()
+    oldest = queue.unsent.length ? clock.now() : null
+    const head = queue
+    void keep(() => store.acknowledge(head, sent.at(-1)?.number ?? 0))
+    options.onSaved(revision)
+  }
+
+  /** Puts the unsent work on top of what others saved. */
+  function takeMissed(revision: number, missed: readonly LoggedBatch[]): void {
+    const theirs = applyEdits(saved, missed.flatMap(batch => batch.transactions).flatMap(each => each.edits))
+    if (isRefused(theirs)) return hinder({ kind: 'forbidden', reason: 'what others saved meanwhile does not fit what this page shows. Reload the page; your edits are kept.' })
+    const rebased = rebaseOnto(theirs.score, queue.unsent)
+    saved = theirs.score
+    queue = rebaseQueue(queue, revision, rebased.transactions)
+    unwritten = []
+    hindrance = null
+    failures = 0
+    oldest = queue.unsent.length ? newest : null
+    const head = queue
+    void keep(() => store.replace(head, [], rebased.readings))
+    options.onRebased(rebased.score, rebased.readings)
+  }
+
+  function hinder(failure: Failure): void {
+    failures += 1
+    const wait = retryDelay(failures, clock.random())
+    switch (failure.kind) {
+      case 'unreachable':
+        hindrance = { kind: 'offline' }
+        return schedule(wait)
+      case 'trouble':
+        hindrance = { kind: 'trouble', reason: failure.reason }
+        return schedule(Math.max(wait, failure.after ?? 0))
+      case 'refused': {
+        const head = queue
+        const refused = { reason: failure.reason, at: clock.now(), copy: options.copy() }
+        void keep(() => store.putHead(head, refused))
+      }
+    }
+    hindrance = failure
+  }
+
+  function retry(): Promise<void> {
+    const done = hindrance?.kind === 'offline' ? !queue.unsent.length : !isPassing(hindrance) && hindrance?.kind !== 'refused'
+    if (done) hindrance = null
+    failures = 0
+    publish()
+    return send()
+  }
+
+  publish()
+  scheduleNext()
+
+  return {
+    record(transaction) {
+      queue = enqueue(queue, transaction)
+      const added = queue.unsent.at(-1)
+      if (added) unwritten = [...unwritten, added]
+      newest = clock.now()
+      oldest ??= newest
+      if (unwritten.length === 1) clock.afterPaint(() => { if (unwritten.length) void keepQueue() })
+      publish()
+      scheduleNext()
+    },
+    now: retry,
+    async catchUp() {
+      // A batch without an answer may be among what the server has: its own retry clears that up first.
+      if (busy || queue.sending || !isPassing(hindrance)) return
+      busy = true
+      const answer = await transport.since(queue.base).catch((): Failure => ({ kind: 'unreachable' }))
+      if (answer.kind === 'since' && answer.batches.length && !queue.sending) takeMissed(answer.revision, answer.batches)
+      busy = false
+      publish()
+      scheduleNext()
+    },
+    network(online) {
+      if (online) return void retry()
+      if (isPassing(hindrance)) hindrance = { kind: 'offline' }
+      publish()
+    },
+    leave() {
+      if (!isPassing(hindrance) || !queue.unsent.length) return
+      const before = queue
+      queue = startSending(queue, fittingCount(queue.unsent, LEAVING_BYTES))
+      if (queue.sending?.count === 0) queue = before
+      void keepQueue()
+      const batch = batchOf(queue)
+      if (batch && fittingCount(queue.unsent.slice(0, queue.sending?.count), LEAVING_BYTES) === queue.sending?.count) void transport.post(batch, true).catch(() => null)
+    },
+    stop: () => cancelTimer(),
+  }
+}
