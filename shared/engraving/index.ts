@@ -1,0 +1,8 @@
+export * from './types'
+export * from './metrics'
+export { carriedKey, carriedOut, linksOf, type BarLinks, type Carried, type Link } from './links'
+export { engraveBar, isSameContext, missingTime, surplusText, tabText, type BarSurroundings } from './bar'
+export { barNumbers, barPlaces, type BarPlace } from './numbers'
+export { columnsOf } from './spacing'
+export { breakIntoSystems, cancelledCount, fillSystem, isSameRole, layOut, notationAt, prefixWidth, roleAt, type PlacedBar, type Role, type System } from './systems'
+export { alterInKey } from './accidentals'
