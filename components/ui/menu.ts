@@ -1,0 +1,1 @@
+export interface MenuItem { readonly id: string, readonly label: string, readonly danger?: boolean }
