@@ -1,6 +1,6 @@
 import { mayInArrangement, type ArrangementAction } from '#shared/permissions'
 import type { ArrangementSummary } from '#shared/schemas/arrangement'
-import type { MenuItem } from '../ui/menu'
+import type { MenuItem } from './menuItem'
 
 export type RowAction = 'rename' | 'duplicate' | 'ready' | 'draft' | 'delete'
 

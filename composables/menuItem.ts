@@ -1,1 +1,2 @@
+/** One action of a menu. */
 export interface MenuItem { readonly id: string, readonly label: string, readonly danger?: boolean }
