@@ -76,9 +76,19 @@ const louder = (a: Placed, b: Placed): Placed => {
   return b.note.fret > a.note.fret ? b : a
 }
 
+const known = new WeakMap<Bar, { before: Bar | undefined, strokes: readonly Stroke[] }>()
+
 /** The touches of strings in a bar, in order of time and string; two voices on one string at one moment are one touch. */
 export function strokesAt(bars: readonly Bar[], bar: number): readonly Stroke[] {
-  const notes = placedNotes(bars[bar]!).filter(item => !isHeldOver(item, bars, bar))
+  const before = bars[bar - 1]
+  const found = known.get(bars[bar]!)
+  if (found && found.before === before) return found.strokes
+  const strokes = gather(placedNotes(bars[bar]!).filter(item => !isHeldOver(item, bars, bar)))
+  known.set(bars[bar]!, { before, strokes })
+  return strokes
+}
+
+function gather(notes: readonly Placed[]): Stroke[] {
   const strokes: Stroke[] = []
   for (const item of notes) {
     const last = strokes.at(-1)
