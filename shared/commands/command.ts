@@ -11,10 +11,10 @@ export type Group = typeof GROUPS[number]
 export type Dialog = 'meter' | 'key' | 'tempo' | 'details' | 'tuning' | 'capo'
 
 /** What only the view can do. `system` moves the cursor by a drawn system (−1 up, 1 down). */
-export type Intent =
-  | { readonly intent: 'play' | 'palette' | 'keys' | 'save' }
-  | { readonly intent: 'system', readonly by: -1 | 1, readonly extend: boolean }
-  | { readonly intent: 'dialog', readonly dialog: Dialog }
+export type Intent
+  = | { readonly intent: 'play' | 'palette' | 'keys' | 'save' }
+    | { readonly intent: 'system', readonly by: -1 | 1, readonly extend: boolean }
+    | { readonly intent: 'dialog', readonly dialog: Dialog }
 
 /**
  * A command is declared once; keys, menus, palette, tooltips, the help page and its test come from the declaration.

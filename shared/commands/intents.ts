@@ -1,0 +1,17 @@
+import { deskCommand, scoreCommand, type Command, type Dialog } from './command'
+
+const dialog = (name: Dialog, title: string, group: 'Bars' | 'Arrangement'): Command =>
+  deskCommand({ id: `dialog.${name}`, title, group, keys: [], run: () => ({ intent: 'dialog', dialog: name }) })
+
+export const intentCommands: readonly Command[] = [
+  scoreCommand({ id: 'desk.play', title: 'Play or stop', group: 'Desk', keys: ['Space'], run: () => ({ intent: 'play' }), help: 'From the cursor, or the selection.' }),
+  deskCommand({ id: 'desk.palette', title: 'Find a command', group: 'Desk', keys: ['Mod+k'], run: () => ({ intent: 'palette' }) }),
+  deskCommand({ id: 'desk.keys', title: 'All keys', group: 'Desk', keys: ['?'], run: () => ({ intent: 'keys' }) }),
+  deskCommand({ id: 'desk.save', title: 'Save now', group: 'Desk', keys: ['Mod+s'], run: () => ({ intent: 'save' }) }),
+  dialog('meter', 'Set the meter', 'Bars'),
+  dialog('key', 'Set the key', 'Bars'),
+  dialog('tempo', 'Set the tempo', 'Bars'),
+  dialog('details', 'Title, people, rights', 'Arrangement'),
+  dialog('tuning', 'Change the tuning', 'Arrangement'),
+  dialog('capo', 'Set capos', 'Arrangement'),
+]
