@@ -1,5 +1,7 @@
 import { CannotOpen } from '../db/client'
+import { config } from '../utils/config'
 import { databaseHandle } from '../utils/database'
+import { DEMO_PASSWORD, DEMO_PEOPLE } from '../utils/demo'
 import { finishLater } from '../utils/later'
 
 /** What ends the process says so in one line; only what we did not foresee shows where it happened. */
@@ -10,9 +12,16 @@ function giveUp(error: unknown): never {
   process.exit(1)
 }
 
+function greet(): void {
+  const { appUrl, mode, demo, smtpUrl } = config()
+  console.log(`Copperwound is ready at ${appUrl}`)
+  if (demo) console.log(`Demo: sign in as ${DEMO_PEOPLE.maren.email} with the password ${DEMO_PASSWORD}`)
+  if (mode === 'local' && !smtpUrl) console.log(`Mail is not sent; what would have been is at ${appUrl}/outbox`)
+}
+
 export default defineNitroPlugin((nitro) => {
   const opening = databaseHandle()
-  opening.catch(giveUp)
+  opening.then(greet, giveUp)
   nitro.hooks.hook('close', async () => {
     await finishLater()
     await (await opening).close()

@@ -37,4 +37,3 @@ export async function authoriseArrangement(event: H3Event, action: ArrangementAc
   if (!mayInArrangement(role, action)) throw forbidden()
   return { user, arrangementId, role }
 }
-

@@ -19,7 +19,8 @@ type Environment = Readonly<Record<string, string | undefined>>
 
 /** @param dev the development server, which is local by nature */
 export function readConfig(env: Environment, dev = false): Config {
-  const mode = env.COPPERWOUND_MODE === 'local' || (env.COPPERWOUND_MODE === undefined && dev) ? 'local' : 'production'
+  const local = env.COPPERWOUND_MODE ? env.COPPERWOUND_MODE === 'local' : dev || env.NODE_ENV === 'test'
+  const mode = local ? 'local' : 'production'
   return {
     mode,
     appUrl: (env.APP_URL || `http://localhost:${env.PORT || 3000}`).replace(/\/+$/, ''),
@@ -32,6 +33,10 @@ export function readConfig(env: Environment, dev = false): Config {
     trustProxy: env.TRUST_PROXY === 'on',
   }
 }
+
+/** Whether the session cookie goes over https only. A browser drops such a cookie on plain http, where some make no exception for this machine. */
+export const isCookieSecure = ({ mode, appUrl }: Config, env: Environment): boolean =>
+  env.NUXT_SESSION_COOKIE_SECURE ? env.NUXT_SESSION_COOKIE_SECURE === 'true' : appUrl.startsWith('https:') || (mode === 'production' && !env.APP_URL)
 
 let known: Config | undefined
 export const config = (): Config => (known ??= readConfig(process.env, import.meta.dev))

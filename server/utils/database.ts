@@ -24,7 +24,7 @@ async function open(): Promise<DbHandle> {
   const { databaseUrl, dataDir, demo } = config()
   const handle = await openDb({ url: databaseUrl, dataDir })
   try {
-    await prepare(handle, await readMigrations(), demo ? layOutDemo : undefined)
+    await prepare(handle, await readMigrations(), demo ? db => layOutDemo(db, hashPassword) : undefined)
     return handle
   }
   catch (error) {

@@ -1,6 +1,6 @@
 import { and, eq } from 'drizzle-orm'
 import { applyEdits, isRefused } from '#shared/edits'
-import type { LoggedBatch, LoggedTransaction, SaveEdits } from '#shared/schemas/edit'
+import type { EditsSince, LoggedBatch, LoggedTransaction, SaveEdits } from '#shared/schemas/edit'
 import { isEqual } from '#shared/score/equal'
 import { MOST_BARS } from '#shared/score/schema'
 import type { Score } from '#shared/score/types'
@@ -81,4 +81,13 @@ export async function rename(db: Db, authorId: string, arrangementId: string, ti
     return append(tx, { arrangementId, authorId, clientId: 'server:rename', seq: current + 1, base: current, transactions }, current)
   })
   return settle(db, arrangementId, written)
+}
+
+/** What was saved after a revision, with the present one. */
+export async function editsSince(db: Db, arrangementId: string, since: number): Promise<EditsSince> {
+  const batches = await batchesAfter(db, arrangementId, since)
+  const last = batches.at(-1)
+  if (last) return { revision: last.revision, batches }
+  const [row] = await db.select({ revision: arrangements.revision }).from(arrangements).where(eq(arrangements.id, arrangementId))
+  return { revision: row?.revision ?? 0, batches }
 }
