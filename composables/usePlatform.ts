@@ -1,6 +1,11 @@
+import { onMounted, ref, type Ref } from 'vue'
 import type { Platform } from '#shared/commands/keys'
 
-/** Whose keyboard this is: macOS has its own modifiers. On the server, and where the browser does not say: the other one. */
-export function usePlatform(): Platform {
-  return typeof navigator !== 'undefined' && /mac|iphone|ipad/i.test(navigator.platform) ? 'mac' : 'other'
+/** Whose key names to show. The server can't know; the page settles it once it is mounted. */
+export function usePlatform(): Ref<Platform> {
+  const platform = ref<Platform>('other')
+  onMounted(() => {
+    if (/mac|iphone|ipad/i.test(navigator.platform)) platform.value = 'mac'
+  })
+  return platform
 }
