@@ -5,7 +5,7 @@
  */
 export type { Lane, Ring, RingEnd } from './types'
 export { ringsAt, type Sequence } from './rings'
-export { isHeldOver, strokesAt, type Placed, type Stroke } from './strokes'
+export { isHeldOver, placedNotes, strokesAt, type Placed, type Stroke } from './strokes'
 export { isOpen, secondsToDie, secondsToDieOf } from './dying'
 export { lanesOfBar, ringOfNote, ringsOfBar } from './memo'
 export { beatsText, ringSentence } from './sentence'

@@ -2,7 +2,7 @@ import { ZERO, compare, isLess, subtract, add, type Fraction } from '../score/fr
 import { soundingMidi } from '../score/sounding'
 import { barLength, beatOf, meterLength, playedLength, secondsOf, startsOf } from '../score/time'
 import type { Head, LinkKind, Note, Score, VoiceName } from '../score/types'
-import { ringsAt, secondsToDieOf, strokesAt, type Ring, type Sequence } from '../ring'
+import { placedNotes, ringsAt, secondsToDieOf, strokesAt, type Placed, type Ring, type Sequence } from '../ring'
 import { excerptOf, type Range } from './excerpt'
 import type { Moment, Schedule, SoundEvent, SoundNote, Touch } from './types'
 
@@ -33,8 +33,8 @@ export function scheduleOf(score: Score, range: Range = {}): Schedule {
   const last = sequence.bars.length - 1
   const length = clock(last, excerpt.to)
   const isHeard = (event: { at: number }) => event.at >= -1e-9 && event.at < length - 1e-9
-  const links = new Map<string, LinkKind | undefined>()
-  const sounds = sequence.bars.flatMap((_, bar) => soundsOfBar(sequence, bar, clock, links))
+  const open = new Map<string, LinkKind | undefined>()
+  const sounds = sequence.bars.flatMap((_, bar) => soundsOfBar(sequence, bar, clock, open))
   const clicks = sequence.bars.flatMap((_, bar) => clicksOfBar(sequence, score, bar, clock)).filter(isHeard)
   const moments = sequence.bars.flatMap((_, bar) => momentsOfBar(sequence, bar, clock))
   return {
@@ -65,16 +65,25 @@ function clockOf({ bars, contexts }: Sequence, from: Fraction): Clock {
 /** Whether the hand, or what is written, ends the note; a string played again ends it by itself, and the rest dies away. */
 const isDamped = (ring: Ring): boolean => ring.ends === 'written' || ring.ends === 'damp'
 
-function soundsOfBar(sequence: Sequence, bar: number, clock: Clock, links: Map<string, LinkKind | undefined>): SoundEvent[] {
+/** The link by which each note of a bar is reached; `open` carries each string's last link, by voice, from bar to bar. */
+function linksInto(notes: readonly Placed[], open: Map<string, LinkKind | undefined>): Map<string, LinkKind | undefined> {
+  return new Map(notes.map(({ note, voice }) => {
+    const path = `${voice} ${note.string}`
+    const link = open.get(path)
+    open.set(path, note.link)
+    return [note.id, link]
+  }))
+}
+
+function soundsOfBar(sequence: Sequence, bar: number, clock: Clock, open: Map<string, LinkKind | undefined>): SoundEvent[] {
   const { head } = sequence.contexts[bar]!
   const rings = ringsAt(sequence, bar).value
+  const links = linksInto(placedNotes(sequence.bars[bar]!), open)
   return strokesAt(sequence.bars, bar).flatMap(({ heard: { note, voice, start } }, index): SoundEvent[] => {
-    const path = `${voice} ${note.string}`
-    const sound = soundOf(head, note, voice, links.get(path))
-    links.set(path, note.link)
     const ring = rings[index]!
-    const damp: SoundEvent = { kind: 'damp', at: clock(bar, add(start, ring.sounds)), string: note.string, noteId: note.id }
-    return [{ kind: 'sound', at: clock(bar, start), note: sound }, ...(isDamped(ring) ? [damp] : [])]
+    const sound: SoundEvent = { kind: 'sound', at: clock(bar, start), note: soundOf(head, note, voice, links.get(note.id)) }
+    if (!isDamped(ring)) return [sound]
+    return [sound, { kind: 'damp', at: clock(bar, add(start, ring.sounds)), string: note.string, noteId: note.id }]
   })
 }
 

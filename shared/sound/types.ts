@@ -17,11 +17,11 @@ export interface SoundNote {
 }
 
 /** Times are seconds from the start at the written tempo; a rate stretches them and leaves the pitch alone. */
-export type SoundEvent =
-  | { readonly kind: 'sound', readonly at: number, readonly note: SoundNote }
-  /** The string is stopped, if that note still sounds on it. */
-  | { readonly kind: 'damp', readonly at: number, readonly string: number, readonly noteId: string }
-  | { readonly kind: 'click', readonly at: number, readonly accent: boolean }
+export type SoundEvent = StartSound | StopSound | Click
+export interface StartSound { readonly kind: 'sound', readonly at: number, readonly note: SoundNote }
+/** The string is stopped, if that note still sounds on it. */
+export interface StopSound { readonly kind: 'damp', readonly at: number, readonly string: number, readonly noteId: string }
+export interface Click { readonly kind: 'click', readonly at: number, readonly accent: boolean }
 
 /** Where playing has got to: the events under way in each voice, from `at` on. */
 export interface Moment { readonly at: number, readonly barId: string, readonly eventIds: readonly string[] }
