@@ -51,7 +51,7 @@ function engrave(bar: Bar, { context, carried, pickup }: BarSurroundings): BarNo
   const slices = slicesOf(moments, events, tab, beamed, subtract(total, missing ?? ZERO))
   const reaches = events.filter(event => !event.hidden).map(event => reach(event.notes, event.stem))
   return {
-    events, beams, tab, links, slices, total,
+    events, beams, tab, links, slices, total, missing,
     tuplets: voices.flatMap(name => tupletsOf(bar, name, beamed, stems, voices.length)),
     surplus: surplusOf(bar, context),
     top: Math.min(0, ...reaches.map(each => each.top)),

@@ -4,5 +4,6 @@ export { carriedKey, carriedOut, linksOf, type BarLinks, type Carried, type Link
 export { engraveBar, isSameContext, missingTime, surplusText, tabText, type BarSurroundings } from './bar'
 export { barNumbers, barPlaces, type BarPlace } from './numbers'
 export { columnsOf } from './spacing'
-export { breakIntoSystems, cancelledCount, fillSystem, isSameRole, layOut, notationAt, prefixWidth, roleAt, type PlacedBar, type Role, type System } from './systems'
+export { breakIntoSystems, cancelledCount, contextsDrawAlike, fillSystem, isSameRole, layOut, notationAt, prefixWidth, roleAt, type PlacedBar, type Role, type System } from './systems'
 export { alterInKey } from './accidentals'
+export { cellAt, endOf, geometryOf, xAt, type BarGeometry, type EventPlace } from './geometry'

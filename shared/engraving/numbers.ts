@@ -10,6 +10,7 @@ export interface BarPlace {
   readonly pickup: boolean
 }
 
+const placeOf = (number: number, pickup: boolean): BarPlace => ({ number, pickup })
 const places = new WeakMap<Score['bars'], readonly BarPlace[]>()
 
 /** Number and place of every bar, by position. */
@@ -20,14 +21,17 @@ export function barPlaces(score: Score): readonly BarPlace[] {
   let number = 0
   let short: Fraction | null = null
   const found = score.bars.map((bar, index) => {
-    const whole = meterLength(contexts[index]!.meter)
     const own = bar.length
-    const isShort = own !== undefined && isLess(own, whole)
-    const completes = isShort && short !== null && compare(add(short, own), whole) <= 0
-    const pickup = isShort && (index === 0 || completes)
-    if (!pickup) number += 1
-    short = isShort && !pickup ? own : completes && short && !equals(add(short, own), whole) ? add(short, own) : null
-    return { number, pickup }
+    const whole = own && meterLength(contexts[index]!.meter)
+    if (!own || !whole || !isLess(own, whole)) {
+      short = null
+      return placeOf(number += 1, false)
+    }
+    const together: Fraction | null = short && add(short, own)
+    const completes = together !== null && compare(together, whole) <= 0
+    const pickup = index === 0 || completes
+    short = completes ? (equals(together, whole) ? null : together) : pickup ? null : own
+    return placeOf(pickup ? number : number += 1, pickup)
   })
   places.set(score.bars, found)
   return found

@@ -1,6 +1,6 @@
-import { contextsOf } from '../score/context'
+import { contextsOf, type Context } from '../score/context'
 import type { Key, Meter, Score } from '../score/types'
-import { engraveBar } from './bar'
+import { engraveBar, isSameContext } from './bar'
 import { carriedOut } from './links'
 import { CLEF_WIDTH, KEY_ACCIDENTAL_WIDTH, METER_WIDTH, REPEAT_WIDTH } from './metrics'
 import { barPlaces } from './numbers'
@@ -139,4 +139,17 @@ export function layOut(score: Score, width: number): readonly System[] {
   })
   const starts = breakIntoSystems(measures, width)
   return starts.map((from, index) => fillSystem(score, from, starts[index + 1] ?? score.bars.length, width))
+}
+
+/** Do equal bars look equal in both scores? Their contexts may be different objects, as after a new title. */
+export function contextsDrawAlike(a: Score, b: Score): boolean {
+  const [left, right] = [contextsOf(a), contextsOf(b)]
+  if (left === right) return true
+  let last: { a: Context, b: Context } | null = null
+  return right.every((context, index) => {
+    const other = left[index]
+    if (!other || (last?.a === other && last.b === context)) return !!other
+    last = { a: other, b: context }
+    return isSameContext(other, context)
+  })
 }

@@ -83,7 +83,10 @@ export interface BarNotation {
   readonly links: readonly Link[]
   readonly slices: readonly Slice[]
   readonly surplus: readonly Surplus[]
+  /** Time the bar takes: what it is meant to hold, or its longest voice where that is more. */
   readonly total: Fraction
+  /** Time that no voice fills yet; null when some voice does. */
+  readonly missing: Fraction | null
   /** Highest and lowest y reached on the staff; its top line is 0. */
   readonly top: number
   readonly bottom: number

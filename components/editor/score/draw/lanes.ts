@@ -1,0 +1,26 @@
+import { LANES_TOP, LANE_SPACE, xAt, type BarGeometry } from '#shared/engraving'
+import type { Fraction } from '#shared/score/fraction'
+import { at, svg } from './svg'
+
+/** How long a string is heard in a bar; times from the bar line. */
+export interface LaneLine {
+  readonly string: number
+  readonly from: Fraction
+  readonly to: Fraction
+  readonly open: boolean
+  readonly starts: boolean
+  readonly ends: boolean
+}
+
+const HEAD = 6
+
+function lane(line: LaneLine, geometry: BarGeometry): Element {
+  const left = line.starts ? xAt(geometry, line.from.n / line.from.d) + HEAD : 0
+  const right = line.ends ? xAt(geometry, line.to.n / line.to.d) + HEAD - 3 : geometry.width
+  const y = LANES_TOP + (line.string - 1) * LANE_SPACE
+  return svg('path', { d: `M${at(left)} ${at(y)}H${at(Math.max(left + 2, Math.min(right, geometry.width)))}`, class: line.open ? 'lane lane-open' : 'lane' })
+}
+
+/** A thin line for each string that sounds, ordered by string; y = 0 is the last string of the tab. */
+export const drawLanes = (lanes: readonly LaneLine[], geometry: BarGeometry): SVGGElement =>
+  svg('g', {}, ...lanes.map(line => lane(line, geometry)))

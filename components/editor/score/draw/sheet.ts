@@ -1,0 +1,328 @@
+import { carriedKey, carriedOut, cellAt, contextsDrawAlike, fillSystem, geometryOf, layOut, notationAt, yOfPosition, type BarGeometry, type System } from '#shared/engraving'
+import { END, type Cursor, type Selection } from '#shared/editor/state'
+import type { Bar, Score } from '#shared/score/types'
+import type { DrawnBar } from './bar'
+import type { LaneLine } from './lanes'
+import { columnX, drawCursor, drawPlaying, drawSelection, stretchIn } from './overlay'
+import { createPen, type Pen } from './staff'
+import { SystemView } from './systemView'
+import type { Vex } from './library'
+import { STRING_SPACE } from '#shared/engraving'
+
+export interface Playing { readonly barId: string, readonly eventIds: readonly string[] }
+export type LanesOf = (score: Score, index: number) => readonly LaneLine[]
+
+/** A pause in typing after which systems are broken and justified anew, in ms. */
+const SETTLE = 600
+/** Systems this far outside the window are drawn beforehand, in CSS pixels. */
+const NEAR = 700
+
+/**
+ * The drawn score. It owns its nodes and changes only what changed: a keystroke draws the bar it edits, moving the cursor
+ * draws no bar, and what lies outside the window is drawn when it comes near.
+ */
+export class Sheet {
+  private score: Score | null = null
+  private views: SystemView[] = []
+  private indexOf = new Map<string, number>()
+  private bars = new Map<string, DrawnBar>()
+  private selection: Selection | null = null
+  private playing: Playing | null = null
+  private width = 0
+  private scale = 1
+  private settling: ReturnType<typeof setTimeout> | undefined
+  private readonly pen: Pen
+  private readonly near = new IntersectionObserver(entries => this.seen(entries), { rootMargin: `${NEAR}px 0px` })
+
+  constructor(private readonly root: HTMLElement, vex: Vex, private lanesOf: LanesOf | null) {
+    this.pen = createPen(vex)
+  }
+
+  /** Shows a score; draws the bars that differ from the one shown before. */
+  show(score: Score): void {
+    const before = this.score
+    this.score = score
+    if (!before || !this.width) return this.rebuild()
+    if (before === score) return
+    const changed = changedBars(before, score)
+    if (changed) this.redraw(before, score, changed)
+    else if (!this.append(before, score)) this.rebuild()
+    this.settleLater()
+    this.drawOverlay()
+  }
+
+  /** @param width of the place for the sheet, in CSS pixels; narrow places get a smaller drawing */
+  resize(width: number): void {
+    const scale = width < 480 ? 0.82 : width < 760 ? 0.92 : 1
+    if (Math.abs(width - this.width) < 1 && scale === this.scale) return
+    this.width = width
+    this.scale = scale
+    this.rebuild(true)
+  }
+
+  showSelection(selection: Selection | null): void {
+    this.selection = selection
+    this.drawOverlay()
+  }
+
+  showPlaying(playing: Playing | null): void {
+    this.playing = playing
+    this.drawOverlay()
+  }
+
+  showLanes(lanesOf: LanesOf | null): void {
+    this.lanesOf = lanesOf
+    this.rebuild(true)
+  }
+
+  /** Draws what is not drawn yet, for print. */
+  drawAll(): void {
+    if (this.settling) this.settle()
+    for (const view of this.views) if (!view.isDrawn && this.score) view.draw(this.score)
+  }
+
+  destroy(): void {
+    clearTimeout(this.settling)
+    this.near.disconnect()
+    this.root.replaceChildren()
+  }
+
+  /** The cell under a point of the window. @param voice whose events are meant where both voices stand */
+  cellAtPoint(clientX: number, clientY: number, current: Cursor | null): Cursor | null {
+    const view = this.viewAtY(clientY)
+    if (!view || !this.score) return null
+    const { x, y } = view.local(clientX, clientY)
+    const placed = view.system.bars.find(bar => x < bar.x + bar.width) ?? view.system.bars.at(-1)!
+    const bar = this.score.bars[placed.index]!
+    const geometry = this.geometry(placed.index)
+    const notation = notationAt(this.score, placed.index)
+    const strings = this.score.head.strings.length
+    const inTab = y > view.tabTop - STRING_SPACE * 1.5
+    const pointed = Math.min(strings, Math.max(1, Math.round((y - view.tabTop) / STRING_SPACE) + 1))
+    const nearest = (voice: Cursor['voice']) => cellAt(geometry, voice, x - placed.x)
+    const voice = current?.voice ?? 'upper'
+    const eventId = nearest(voice)
+    const noteOf = (id: string, string: number) => notation.events.find(each => each.eventId === id)?.notes.find(note => note.string === string)
+    if (!inTab) {
+      const notes = notation.events.find(each => each.eventId === eventId)?.notes ?? []
+      const note = [...notes].sort((a, b) => Math.abs(yOfPosition(a.position) - y) - Math.abs(yOfPosition(b.position) - y))[0]
+      return { barId: bar.id, voice, eventId, string: note?.string ?? current?.string ?? 1 }
+    }
+    // A number of another voice under the pointer is what was meant.
+    const other = noteOf(eventId, pointed)
+      ? undefined
+      : notation.tab.find(mark => mark.string === pointed && mark.voice !== voice && Math.abs(geometry.columns[mark.slice]! + 6 - (x - placed.x)) < 12)
+    return other ? { barId: bar.id, voice: other.voice, eventId: other.eventId, string: pointed } : { barId: bar.id, voice, eventId, string: pointed }
+  }
+
+  /** The cell above or below a cursor's, one system on; null at the first and last. */
+  systemNeighbour(cursor: Cursor, direction: 1 | -1): Cursor | null {
+    const here = this.placeOf(cursor)
+    const view = here && this.views[here.system + direction]
+    if (!here || !view || !this.score) return null
+    const placed = view.system.bars.find(bar => here.x < bar.x + bar.width) ?? view.system.bars.at(-1)!
+    return { ...cursor, barId: this.score.bars[placed.index]!.id, eventId: cellAt(this.geometry(placed.index), cursor.voice, here.x - placed.x) }
+  }
+
+  /** Brings the cursor's system into the window. */
+  scrollToCursor(behavior: ScrollBehavior = 'auto'): void {
+    const here = this.selection && this.placeOf(this.selection.cursor)
+    if (here) this.views[here.system]?.element.scrollIntoView({ block: 'nearest', behavior })
+  }
+
+  private placeOf(cursor: Pick<Cursor, 'barId' | 'voice' | 'eventId'>): { system: number, index: number, x: number, inBar: number } | null {
+    const index = this.indexOf.get(cursor.barId)
+    if (index === undefined) return null
+    const system = this.systemOf(index)
+    const placed = this.views[system]?.system.bars.find(bar => bar.index === index)
+    if (!placed) return null
+    const inBar = columnX(this.geometry(index), cursor)
+    return { system, index, x: placed.x + inBar, inBar }
+  }
+
+  private geometry(index: number): BarGeometry {
+    const placed = this.views[this.systemOf(index)]!.system.bars.find(bar => bar.index === index)!
+    const notation = notationAt(this.score!, index)
+    const drawn = this.bars.get(this.score!.bars[index]!.id)
+    return drawn?.notation === notation && drawn.width === placed.width && drawn.prefix === placed.prefix ? drawn.geometry : geometryOf(notation, placed.prefix, placed.width)
+  }
+
+  /** Position of the system that holds the bar at `index`. */
+  private systemOf(index: number): number {
+    let [low, high] = [0, this.views.length - 1]
+    while (low < high) {
+      const middle = (low + high) >> 1
+      if (this.views[middle]!.system.bars.at(-1)!.index < index) low = middle + 1
+      else high = middle
+    }
+    return low
+  }
+
+  private viewAtY(clientY: number): SystemView | undefined {
+    let [low, high] = [0, this.views.length - 1]
+    while (low < high) {
+      const middle = (low + high) >> 1
+      if (this.views[middle]!.clientTop().bottom < clientY) low = middle + 1
+      else high = middle
+    }
+    return this.views[low]
+  }
+
+  /** Width for the systems in points; the bracket stands left of it. */
+  private get lineWidth(): number {
+    return Math.max(140, this.width / this.scale - 12)
+  }
+
+  private redraw(before: Score, score: Score, changed: readonly number[]): void {
+    const touched = new Set<number>()
+    for (const index of changed) {
+      touched.add(index)
+      const handsOn = carriedKey(carriedOut(before.bars[index])) !== carriedKey(carriedOut(score.bars[index]))
+      if (handsOn && index + 1 < score.bars.length) touched.add(index + 1)
+    }
+    const bySystem = new Map<number, number[]>()
+    for (const index of touched) {
+      const system = this.systemOf(index)
+      const position = this.views[system]!.system.bars.findIndex(bar => bar.index === index)
+      bySystem.set(system, [...(bySystem.get(system) ?? []), position])
+    }
+    // A link across a system's end is drawn in both.
+    for (const index of touched) {
+      const system = this.systemOf(index - 1)
+      if (index > 0 && !bySystem.has(system)) bySystem.set(system, [])
+    }
+    for (const [system, positions] of bySystem) this.views[system]!.redraw(score, positions)
+    // What rings over from the changed bar shows in the systems that follow.
+    const last = Math.max(...bySystem.keys())
+    for (const view of this.views.slice(last + 1, last + 3)) view.drawLanes(score)
+  }
+
+  /** Bars added at the end join the last system, or begin one, and leave the others where they are. */
+  private append(before: Score, score: Score): boolean {
+    const last = this.views.at(-1)
+    if (!last || !isAppended(before, score)) return false
+    score.bars.slice(before.bars.length).forEach((bar, offset) => this.indexOf.set(bar.id, before.bars.length + offset))
+    const from = last.system.bars[0]!.index
+    const joined = fillSystem(score, from, score.bars.length, this.lineWidth)
+    const isLoose = joined.bars.every(bar => bar.width >= notationAt(score, bar.index).least + bar.prefix) && joined.bars.length <= 6
+    const changed = changedBars(before, { ...score, bars: score.bars.slice(0, before.bars.length) })
+    if (!changed) return false
+    if (isLoose) last.setSystem(joined, score)
+    else {
+      last.setSystem(fillSystem(score, from, before.bars.length, this.lineWidth), score)
+      this.views.push(this.addView(fillSystem(score, before.bars.length, score.bars.length, this.lineWidth), score))
+    }
+    const elsewhere = changed.filter(index => index < from)
+    if (elsewhere.length) this.redraw(before, score, elsewhere)
+    return true
+  }
+
+  private settleLater(): void {
+    clearTimeout(this.settling)
+    this.settling = setTimeout(() => this.settle(), SETTLE)
+  }
+
+  private settle(): void {
+    clearTimeout(this.settling)
+    this.settling = undefined
+    this.rebuild()
+  }
+
+  /** Breaks the score into systems anew. Systems and bars that come out the same keep their nodes. */
+  private rebuild(anew = false): void {
+    const { score } = this
+    if (!score || !this.width) return
+    if (anew) this.dropViews()
+    const systems = layOut(score, this.lineWidth)
+    this.indexOf = new Map(score.bars.map((bar, index) => [bar.id, index]))
+    for (const view of this.views.splice(systems.length)) this.dropView(view)
+    systems.forEach((system, position) => {
+      const view = this.views[position]
+      if (view) view.setSystem(system, score)
+      else this.views.push(this.addView(system, score))
+    })
+    for (const id of this.bars.keys()) if (!this.indexOf.has(id)) this.bars.delete(id)
+    this.drawFirst(score)
+    this.drawOverlay()
+  }
+
+  /** What is in the window at first is drawn at once; the observer tells of the rest. */
+  private drawFirst(score: Score): void {
+    let room = 900
+    for (const view of this.views) {
+      if (room < 0) return
+      if (!view.isDrawn) view.draw(score)
+      room -= view.height * this.scale
+    }
+  }
+
+  private addView(system: System, score: Score): SystemView {
+    const view = new SystemView(system, score, this.scale, { pen: this.pen, bars: this.bars, lanesOf: this.lanesOf })
+    this.root.append(view.element)
+    this.near.observe(view.element)
+    return view
+  }
+
+  private dropView(view: SystemView): void {
+    this.near.unobserve(view.element)
+    view.element.remove()
+  }
+
+  private dropViews(): void {
+    for (const view of this.views.splice(0)) this.dropView(view)
+    this.bars.clear()
+  }
+
+  private seen(entries: readonly IntersectionObserverEntry[]): void {
+    const arrived = new Set(entries.filter(entry => entry.isIntersecting).map(entry => entry.target))
+    for (const view of this.views) if (arrived.has(view.element) && this.score && !view.isDrawn) view.draw(this.score)
+  }
+
+  private drawOverlay(): void {
+    const { score, selection } = this
+    for (const view of this.views) if (view.overlay.firstChild) view.overlay.replaceChildren()
+    if (!score) return
+    const strings = score.head.strings.length
+    if (selection?.anchor) this.drawStretch(selection.anchor, selection.cursor, strings)
+    const cursor = selection && this.placeOf(selection.cursor)
+    if (cursor) {
+      const view = this.views[cursor.system]!
+      view.overlay.append(...drawCursor(cursor.x, selection.cursor.string, strings, view.tabTop))
+    }
+    const sounding = this.playing && this.placeOf({ barId: this.playing.barId, voice: 'upper', eventId: this.playing.eventIds[0] ?? END })
+    if (sounding) {
+      const view = this.views[sounding.system]!
+      view.overlay.append(drawPlaying(sounding.x, strings, view.tabTop))
+    }
+  }
+
+  private drawStretch(anchor: Cursor, cursor: Cursor, strings: number): void {
+    const ends = [this.placeOf(anchor), this.placeOf(cursor)].flatMap(end => end ?? [])
+    if (ends.length < 2) return
+    const [from, to] = ends.map(({ index, inBar, system }) => ({ index, x: inBar, system })).sort((a, b) => a.index - b.index || a.x - b.x)
+    for (const view of this.views.slice(from!.system, to!.system + 1)) {
+      const stretch = stretchIn(view.system, from!, to!)
+      if (stretch) view.overlay.append(drawSelection(stretch.from, stretch.to, strings, view.tabTop))
+    }
+  }
+}
+
+/** Positions of the bars that differ in their voices only; null where the score has another shape, look or context. */
+function changedBars(before: Score, after: Score): readonly number[] | null {
+  if (before.bars.length !== after.bars.length || !contextsDrawAlike(before, after)) return null
+  const changed: number[] = []
+  for (let index = 0; index < after.bars.length; index++) {
+    const [old, now] = [before.bars[index]!, after.bars[index]!]
+    if (old === now) continue
+    if (!isSameFrame(old, now)) return null
+    changed.push(index)
+  }
+  return changed
+}
+
+const isSameFrame = (a: Bar, b: Bar): boolean =>
+  a.id === b.id && a.meter === b.meter && a.key === b.key && a.tempo === b.tempo && a.length === b.length
+  && a.repeatStart === b.repeatStart && a.repeatEnd === b.repeatEnd && a.ring === b.ring
+
+const isAppended = (before: Score, after: Score): boolean =>
+  after.bars.length > before.bars.length && before.bars.every((bar, index) => after.bars[index]!.id === bar.id)
