@@ -44,6 +44,9 @@ export default defineNitroPlugin((nitro) => {
     setResponseHeader(event, 'Content-Security-Policy', contentPolicy(nonceOf(event), secure))
     if (secure) setResponseHeader(event, 'Strict-Transport-Security', 'max-age=31536000')
   })
+  nitro.hooks.hook('render:response', (response) => {
+    if (response.headers) Reflect.deleteProperty(response.headers, 'x-powered-by')
+  })
   nitro.hooks.hook('render:html', (html, { event }) => {
     const nonce = nonceOf(event)
     html.head = withNonce(html.head, nonce)

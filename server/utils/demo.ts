@@ -1,6 +1,6 @@
 import { eq } from 'drizzle-orm'
 import type { Db } from '../db/client'
-import { members, settings, users } from '../db/schema'
+import { arrangements, members, settings, users } from '../db/schema'
 import { createArrangement, setState } from './arrangements'
 import { demoPieces } from './demoPieces'
 
@@ -32,6 +32,8 @@ export async function layOutDemo(db: Db, hash: (password: string) => Promise<str
     await setState(tx, await createArrangement(tx, ines, pieces.lanternWaltz), 'ready')
     const road = await createArrangement(tx, maren, pieces.saltmarshRoad)
     await tx.insert(members).values([{ arrangementId: road, userId: ines, role: 'co-arranger' }, { arrangementId: road, userId: teo, role: 'performer' }])
+    // One transaction has one time; the folio shall show the piece to begin with at the top.
+    await tx.update(arrangements).set({ changedAt: new Date() }).where(eq(arrangements.id, road))
     await tx.insert(settings).values({ key: 'demo', value: { laidOutAt: new Date().toISOString() } })
   })
 }

@@ -1,5 +1,6 @@
 import { getQuery, getRequestHeader, readRawBody, type H3Event } from 'h3'
 import type { z } from 'zod'
+import { firstComplaint } from './issues'
 import { problem } from './problems'
 
 /** Bytes. Enough for every form; saves and imports say their own. */
@@ -20,24 +21,11 @@ function parseJson(body: string | undefined): unknown {
   }
 }
 
-/** "transactions.0.label is too long"; a union's first complaint stands for it. */
-function firstIssue(error: z.ZodError): { field: string, message: string } {
-  let issue = error.issues[0]!
-  let path = issue.path
-  while (issue.code === 'invalid_union' && issue.errors.some(each => each.length)) {
-    // The branch that got furthest is the one that was meant.
-    const branch = [...issue.errors].filter(each => each.length).sort((a, b) => b[0]!.path.length - a[0]!.path.length || a.length - b.length)[0]!
-    issue = branch[0]!
-    path = [...path, ...issue.path]
-  }
-  return { field: path.map(String).join('.'), message: issue.message }
-}
-
 function check<T>(schema: z.ZodType<T>, value: unknown): T {
-  const result = schema.safeParse(value)
+  const result = schema.safeParse(value, { reportInput: true })
   if (result.success) return result.data
-  const { field, message } = firstIssue(result.error)
-  throw problem(400, { code: 'bad-request', message: field ? `${field}: ${message}` : message, ...(field && { field }) })
+  const { field, message } = firstComplaint(result.error)
+  throw problem(400, { code: 'bad-request', message, ...(field && { field }) })
 }
 
 /** The JSON body, checked. @param most bytes accepted */

@@ -7,6 +7,9 @@ import type { Bar, Base, Capo, Harmonic, Head, Key, Length, Meter, Note, OpenStr
  * an unknown field is an error and never lost silently, and bounded in size. The rules of music are `validateScore`'s.
  */
 
+// In a browser the schemas are read, not compiled: compiling asks for eval, which the content policy refuses with a message in the console.
+if ('document' in globalThis) z.config({ jitless: true })
+
 /** A database keeps neither NUL nor half a surrogate pair in its JSON, so that text is refused before it gets there. */
 const unkeepable = /\0|\p{Surrogate}/u
 export const text = (max: number) => z.string().max(max).refine(value => !unkeepable.test(value), 'has a character that cannot be kept')

@@ -1,6 +1,7 @@
 import { ZERO, compare, fraction } from './fraction'
 import { midiOf, parsePitch } from './pitch'
 import { isFretOnNeck } from './sounding'
+import { voiceTotal } from './time'
 import { BASES, VOICE_NAMES, type Bar, type Head, type Note, type Score, type ScoreEvent, type Voice } from './types'
 
 /** Each function answers null for what is sound, else one sentence saying what is wrong and where. Shape (types of fields) is the
@@ -60,7 +61,19 @@ export function validateVoice(voice: Voice, head: Head): string | null {
   if (double) return `the id ${double} is used twice.`
   const tuplet = voice.tuplets?.find(each => each.actual < 2 || each.normal < 1)
   if (tuplet) return `a tuplet of ${tuplet.actual} in the time of ${tuplet.normal} is none.`
-  return first(voice.events, event => validateEvent(event, voice, head))
+  return first(voice.events, event => validateEvent(event, voice, head)) ?? (isCountable(voice) ? null : 'its tuplets are too many kinds for their time to be counted exactly.')
+}
+
+/** Many different tuplets in one bar can need a denominator beyond the whole numbers that a computer counts exactly. */
+function isCountable(voice: Voice): boolean {
+  try {
+    voiceTotal(voice)
+    return true
+  }
+  catch (error) {
+    if (error instanceof RangeError) return false
+    throw error
+  }
 }
 
 export function validateBar(bar: Bar, head: Head): string | null {
