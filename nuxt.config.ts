@@ -6,8 +6,9 @@ export default defineNuxtConfig({
   },
   srcDir: '.',
   compatibilityDate: '2026-01-01',
-  nitro: { serverAssets: [{ baseName: 'migrations', dir: './db/migrations' }] }, typescript: { strict: true, tsConfig: { compilerOptions: { noUncheckedIndexedAccess: true } } },
-  // relative to server/
+  // The folder is relative to server/.
+  nitro: { serverAssets: [{ baseName: 'migrations', dir: './db/migrations' }] },
+  typescript: { strict: true, tsConfig: { compilerOptions: { noUncheckedIndexedAccess: true } } },
   telemetry: false,
   eslint: { config: { stylistic: { quotes: 'single', semi: false, indent: 2 } } },
   tailwindcss: { cssPath: '~/assets/css/main.css' },

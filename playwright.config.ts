@@ -31,7 +31,8 @@ export default defineConfig({
     env: {
       PORT: String(port),
       HOST: '127.0.0.1',
-      NODE_ENV: 'test',
+      NODE_ENV: 'production',
+      COPPERWOUND_MODE: 'local',
       PGLITE_DIR: join(data, 'pglite'),
       NUXT_SESSION_PASSWORD: 'only-for-tests-only-for-tests-only',
     },
