@@ -1,0 +1,2 @@
+export { readMusicXml, type ReadMusicXml } from './read'
+export { writeMusicXml, type WriteOptions } from './write'
