@@ -64,7 +64,7 @@ export const useEditorStore = defineStore('editor', () => {
   /** @returns takes the listener away */
   function listen(listener: EditorListener): () => void {
     listeners.add(listener)
-    return () => { listeners.delete(listener) }
+    return () => void listeners.delete(listener)
   }
 
   return { state, score, selection, ids, open, close, dispatch, run, replaceScore, say, listen }

@@ -1,7 +1,8 @@
 import { acknowledge, batchOf, emptyQueue, rebaseQueue, type SaveQueue } from '#shared/editor/saving'
+import { rebaseOnto } from '#shared/editor/rebase'
 import type { ArrangementDetail } from '#shared/schemas'
 import type { Score } from '#shared/score/types'
-import { rebaseOnto, type Reading } from './rebasing'
+import { readingsOf, type Reading } from './readings'
 import type { Failure, Transport } from './transport'
 import type { KeptQueue, UnsentStore } from './unsentStore'
 
@@ -68,7 +69,8 @@ export async function openWithUnsent(options: OpenOptions): Promise<Opened> {
   const mine = found.flatMap(queue => queue.unsent)
   const rebased = rebaseOnto(detail.score, mine)
   const queue = rebaseQueue(emptyQueue(clientId, detail.revision), detail.revision, rebased.transactions)
-  if (found.length) await store.replace(queue, found.map(each => each.clientId), rebased.readings)
-  const readings = await store.readings().catch(() => rebased.readings)
+  const aside = readingsOf(rebased.conflicts, `${clientId}-${detail.revision}`)
+  if (found.length) await store.replace(queue, found.map(each => each.clientId), aside)
+  const readings = await store.readings().catch(() => aside)
   return { detail, score: rebased.score, queue, readings, refused: left.filter(each => each.refused), recovered: mine.length }
 }

@@ -3,9 +3,10 @@ import {
   acknowledge, batchOf, enqueue, fittingCount, isPassing, rebaseQueue, retryDelay, sendTime, startSending,
   type Hindrance, type LoggedTransaction, type SaveQueue, type SaveStatus, type Unsent,
 } from '#shared/editor/saving'
+import { rebaseOnto } from '#shared/editor/rebase'
 import type { LoggedBatch } from '#shared/schemas'
 import type { Score } from '#shared/score/types'
-import { rebaseOnto, type Reading } from './rebasing'
+import { readingsOf, type Reading } from './readings'
 import type { Failure, PostAnswer, Transport } from './transport'
 import type { UnsentStore } from './unsentStore'
 
@@ -34,7 +35,7 @@ export interface SaverOptions {
   /** The server has a new revision of ours. */
   readonly onSaved: (revision: number) => void
   /** The whole arrangement as it stands, as a file: kept where the server refuses it. */
-  readonly copy: () => string
+  readonly copy: () => Promise<string>
 }
 
 export interface Saver {
@@ -84,8 +85,11 @@ export function createSaver(options: SaverOptions): Saver {
 
   /** Writes go in the order of the calls; the header learns whether they were kept. */
   function keep(write: () => Promise<unknown>): Promise<unknown> {
-    writes = writes.then(write).then(() => { kept = true }, () => { kept = false }).then(publish)
-    return Promise.race([writes, new Promise<void>((resolve) => { clock.after(WRITE_PATIENCE, resolve) })])
+    writes = writes.then(write).then(() => true, () => false).then((done) => {
+      kept = done
+      publish()
+    })
+    return Promise.race([writes, new Promise<void>(resolve => void clock.after(WRITE_PATIENCE, resolve))])
   }
 
   function keepQueue(): Promise<unknown> {
@@ -145,7 +149,8 @@ export function createSaver(options: SaverOptions): Saver {
   function takeMissed(revision: number, missed: readonly LoggedBatch[]): void {
     const theirs = applyEdits(saved, missed.flatMap(batch => batch.transactions).flatMap(each => each.edits))
     if (isRefused(theirs)) return hinder({ kind: 'forbidden', reason: 'what others saved meanwhile does not fit what this page shows. Reload the page; your edits are kept.' })
-    const rebased = rebaseOnto(theirs.score, queue.unsent)
+    const rebased = rebaseOnto(theirs.score, queue.unsent, saved)
+    const readings = readingsOf(rebased.conflicts, `${queue.clientId}-${revision}`)
     saved = theirs.score
     queue = rebaseQueue(queue, revision, rebased.transactions)
     unwritten = []
@@ -153,8 +158,8 @@ export function createSaver(options: SaverOptions): Saver {
     failures = 0
     oldest = queue.unsent.length ? newest : null
     const head = queue
-    void keep(() => store.replace(head, [], rebased.readings))
-    options.onRebased(rebased.score, rebased.readings)
+    void keep(() => store.replace(head, [], readings))
+    options.onRebased(rebased.score, readings)
   }
 
   function hinder(failure: Failure): void {
@@ -168,9 +173,8 @@ export function createSaver(options: SaverOptions): Saver {
         hindrance = { kind: 'trouble', reason: failure.reason }
         return schedule(Math.max(wait, failure.after ?? 0))
       case 'refused': {
-        const head = queue
-        const refused = { reason: failure.reason, at: clock.now(), copy: options.copy() }
-        void keep(() => store.putHead(head, refused))
+        const [head, at] = [queue, clock.now()]
+        void keep(async () => await store.putHead(head, { reason: failure.reason, at, copy: await options.copy() }))
       }
     }
     hindrance = failure
@@ -194,7 +198,7 @@ export function createSaver(options: SaverOptions): Saver {
       if (added) unwritten = [...unwritten, added]
       newest = clock.now()
       oldest ??= newest
-      if (unwritten.length === 1) clock.afterPaint(() => { if (unwritten.length) void keepQueue() })
+      if (unwritten.length === 1) clock.afterPaint(() => void (unwritten.length && keepQueue()))
       publish()
       scheduleNext()
     },

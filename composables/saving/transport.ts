@@ -2,21 +2,21 @@ import type { Batch } from '#shared/editor/saving'
 import type { EditsSince, LoggedBatch, Problem, SaveAnswer, StaleProblem } from '#shared/schemas'
 
 /** What came of a request, in the terms that saving decides by. */
-export type Failure =
+export type Failure
   /** No answer at all: the network, or a server that is down. */
-  | { readonly kind: 'unreachable' }
+  = | { readonly kind: 'unreachable' }
   /** An answer that may be another one later. `after` in ms, where the server says when. */
-  | { readonly kind: 'trouble', readonly reason: string, readonly after?: number }
-  | { readonly kind: 'signed-out' }
+    | { readonly kind: 'trouble', readonly reason: string, readonly after?: number }
+    | { readonly kind: 'signed-out' }
   /** No right to this arrangement, or it is gone. */
-  | { readonly kind: 'forbidden', readonly reason: string }
+    | { readonly kind: 'forbidden', readonly reason: string }
   /** It will never be taken as it is. */
-  | { readonly kind: 'refused', readonly reason: string }
+    | { readonly kind: 'refused', readonly reason: string }
 
-export type PostAnswer =
-  | { readonly kind: 'accepted', readonly revision: number }
-  | { readonly kind: 'stale', readonly revision: number, readonly missed: readonly LoggedBatch[] }
-  | Failure
+export type PostAnswer
+  = | { readonly kind: 'accepted', readonly revision: number }
+    | { readonly kind: 'stale', readonly revision: number, readonly missed: readonly LoggedBatch[] }
+    | Failure
 export type SinceAnswer = { readonly kind: 'since', readonly revision: number, readonly batches: readonly LoggedBatch[] } | Failure
 
 export interface Transport {

@@ -1,6 +1,6 @@
 import { openDB, type DBSchema, type IDBPDatabase, type IDBPTransaction } from 'idb'
 import type { SaveQueue, Unsent } from '#shared/editor/saving'
-import type { Reading } from './rebasing'
+import type { Reading } from './readings'
 
 /** Why the server would not take a queue, with a copy of the whole arrangement as it stood on this device. */
 export interface RefusedCopy { readonly reason: string, readonly at: number, readonly copy: string }
@@ -54,7 +54,12 @@ const allOf = (clientId: string, through = Infinity): IDBKeyRange => IDBKeyRange
 /** The unsent work of one person on one arrangement: another person who signs in on the same device neither sees nor sends it. */
 export function createUnsentStore(arrangement: string, user: string): UnsentStore {
   let opening: Promise<IDBPDatabase<Unsents>> | null = null
-  const database = (): Promise<IDBPDatabase<Unsents>> => (opening ??= open().catch((error: unknown) => { opening = null; throw error }))
+  const database = (): Promise<IDBPDatabase<Unsents>> => {
+    opening ??= open()
+    // The next call tries anew.
+    opening.catch(() => (opening = null))
+    return opening
+  }
 
   const headOf = ({ unsent: _, ...head }: SaveQueue, refused?: RefusedCopy): KeptHead =>
     ({ ...head, arrangement, user, ...(refused && { refused }) })

@@ -88,12 +88,12 @@ export const retryDelay = (failures: number, random: number): number =>
   Math.min(RETRY_MS.longest, RETRY_MS.first * 2 ** (failures - 1)) * (0.5 + random / 2)
 
 /** What keeps work from being saved. Being offline and a server in trouble pass by themselves; the others need a person. */
-export type Hindrance =
-  | { readonly kind: 'offline' }
-  | { readonly kind: 'trouble', readonly reason: string }
-  | { readonly kind: 'forbidden', readonly reason: string }
-  | { readonly kind: 'signed-out' }
-  | { readonly kind: 'refused', readonly reason: string }
+export type Hindrance
+  = | { readonly kind: 'offline' }
+    | { readonly kind: 'trouble', readonly reason: string }
+    | { readonly kind: 'forbidden', readonly reason: string }
+    | { readonly kind: 'signed-out' }
+    | { readonly kind: 'refused', readonly reason: string }
 
 export const isPassing = (hindrance: Hindrance | null): boolean => hindrance === null || hindrance.kind === 'offline' || hindrance.kind === 'trouble'
 

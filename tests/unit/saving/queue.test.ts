@@ -35,7 +35,10 @@ describe('the queue of unsent work', () => {
         queue = acknowledge(queue, batch.base + 1)
       }
       for (const each of acts) {
-        if (each === 'type') { typed.push(`${typed.length}`); queue = enqueue(queue, step(typed.at(-1)!)) }
+        if (each === 'type') {
+          typed.push(`${typed.length}`)
+          queue = enqueue(queue, step(typed.at(-1)!))
+        }
         if (each === 'send') queue = startSending(queue)
         if (each === 'limit') queue = startSending(queue, 2)
         if (each === 'answer') answer()

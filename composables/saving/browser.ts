@@ -1,0 +1,40 @@
+import type { Clock, Saver } from './saver'
+
+/** The browser's clock. A frame that is not drawn, in a tab behind others, counts as painted after a tenth of a second. */
+export const browserClock: Clock = {
+  now: () => Date.now(),
+  after(ms, call) {
+    const timer = setTimeout(call, ms)
+    return () => clearTimeout(timer)
+  },
+  random: () => Math.random(),
+  afterPaint(call) {
+    let done = false
+    const once = () => {
+      if (!done) call()
+      done = true
+    }
+    requestAnimationFrame(() => setTimeout(once))
+    setTimeout(once, 100)
+  },
+}
+
+/** Tells a saver what the browser knows: the network, the page going and coming back, other tabs' saves. Returns what ends it. */
+export function connectBrowser(arrangement: string, saver: Saver): { readonly announce: (revision: number) => void, readonly end: () => void } {
+  const ends = new AbortController()
+  const on = (target: EventTarget, name: string, call: () => void) => target.addEventListener(name, call, { signal: ends.signal })
+  on(window, 'online', () => saver.network(true))
+  on(window, 'offline', () => saver.network(false))
+  on(window, 'pagehide', () => saver.leave())
+  on(window, 'pageshow', () => void saver.now())
+  on(document, 'visibilitychange', () => void (document.visibilityState === 'hidden' ? saver.now() : saver.catchUp()))
+  const channel = typeof BroadcastChannel === 'undefined' ? null : new BroadcastChannel(`copperwound-saved-${arrangement}`)
+  if (channel) on(channel, 'message', () => void saver.catchUp())
+  return {
+    announce: revision => channel?.postMessage(revision),
+    end() {
+      ends.abort()
+      channel?.close()
+    },
+  }
+}
