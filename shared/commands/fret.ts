@@ -1,4 +1,5 @@
 import { cursorAt, placeOf, type EditorState, type IdSource, type Transaction } from '../editor'
+import { isEqual } from '../score/equal'
 import { isFretOnNeck } from '../score/sounding'
 import type { Note } from '../score/types'
 import { replaceVoice, spliced, withNote } from './change'
@@ -29,13 +30,13 @@ export function enterDigit(state: EditorState, ids: IdSource, digit: string): Tr
   }
   const entered = fretted(note, note?.id ?? ids.next(), cursor.string, fret)
   const base = event ?? newEvent(voice, state.entry, ids)
-  const next = spliced(voice, at, at + 1, [withNote(base, entered)])
+  const unchanged = isEqual(note, entered)
   return {
     label,
-    edits: [replaceVoice(bar, cursor.voice, next)],
+    edits: unchanged ? [] : [replaceVoice(bar, cursor.voice, spliced(voice, at, at + 1, [withNote(base, entered)]))],
     selection: { cursor: { ...cursorAt(bar, cursor.voice, at, cursor.string), eventId: base.id }, anchor: null },
-    typed: { noteId: entered.id, digits: whole === null ? digit : String(whole) },
-    history: whole === null ? 'record' : 'merge',
+    typed: { noteId: entered.id, digits: whole === null ? digit : String(whole), recorded: !unchanged },
+    history: whole !== null && state.typed?.recorded ? 'merge' : 'record',
   }
 }
 

@@ -26,8 +26,8 @@ export interface EventRun { readonly events: readonly ScoreEvent[], readonly tup
 /** What was cut or copied: whole bars (the first states its meter, key and tempo), or one run of events for each bar they came from. */
 export type Clip = { readonly kind: 'bars', readonly bars: readonly Bar[] } | { readonly kind: 'events', readonly runs: readonly EventRun[] }
 
-/** What is remembered of a fret being typed, so that 1 then 2 is 12. Any other act clears it. */
-export interface TypedFret { readonly noteId: string, readonly digits: string }
+/** What is remembered of a fret being typed, so that 1 then 2 is 12. Any other act clears it. `recorded`: its first digit changed something. */
+export interface TypedFret { readonly noteId: string, readonly digits: string, readonly recorded: boolean }
 
 export interface HistoryEntry {
   readonly label: string
