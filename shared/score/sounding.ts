@@ -3,8 +3,11 @@ import type { Head, Note } from './types'
 
 /** Law 1, in one place: sounding pitch = the string's open pitch + the capo that covers it + fret. */
 
+/** What decides the pitch of a string: the strings and the capos on them. */
+export type Strung = Pick<Head, 'strings' | 'capos'>
+
 /** The fret, counted from the nut, at which the capo (or the start of a short string) stops this string; 0: none. */
-export function capoFret(head: Head, string: number): number {
+export function capoFret(head: Strung, string: number): number {
   const covering = head.capos.filter(capo => !capo.strings || capo.strings.includes(string)).map(capo => capo.fret)
   return Math.max(0, head.strings[string - 1]?.from ?? 0, ...covering)
 }
@@ -14,14 +17,14 @@ export const fretFromNut = (head: Head, note: Pick<Note, 'string' | 'fret'>): nu
 
 /** Sounding pitch of the string plucked open, capo on. A short string's stored pitch is already the one it starts at.
  * @throws RangeError when there is no such string. */
-export function openMidi(head: Head, string: number): number {
+export function openMidi(head: Strung, string: number): number {
   const open = head.strings[string - 1]
   if (!open) throw new RangeError(`no string ${string}`)
   return midiOfText(open.pitch) + capoFret(head, string) - (open.from ?? 0)
 }
 
 /** Half steps by which the written staff lies below the sound because of the capo: the largest full capo. */
-export const capoOffset = (head: Head): number =>
+export const capoOffset = (head: Strung): number =>
   Math.max(0, ...head.capos.filter(capo => !capo.strings || capo.strings.length === head.strings.length).map(capo => capo.fret))
 
 /** Sounding pitch (MIDI number; for partials off the half step with decimals). */

@@ -1,3 +1,4 @@
+import { midiOfText } from '../score/pitch'
 import type { OpenString } from '../score/types'
 
 /**
@@ -11,11 +12,15 @@ export interface CatalogueTuning {
   readonly name: string
   /** Sounding pitches from string N to string 1. */
   readonly pitches: readonly string[]
+  readonly instrument: string
+  /** The fret at which the last string starts, where that one is short. */
+  readonly lastStringFrom?: number
 }
 
-const row = (name: string, pitches: string): CatalogueTuning => ({ name, pitches: pitches.split(' ') })
+const on = (instrument: string) => (name: string, pitches: string): CatalogueTuning => ({ name, pitches: pitches.split(' '), instrument })
+const row = on('guitar')
 
-export const STANDARD = row('Standard', 'E2 A2 D3 G3 B3 E4')
+export const STANDARD: CatalogueTuning = row('Standard', 'E2 A2 D3 G3 B3 E4')
 
 export const GUITAR_TUNINGS: readonly CatalogueTuning[] = [
   row('Drop D', 'D2 A2 D3 G3 B3 E4'), // M
@@ -50,15 +55,27 @@ export const GUITAR_TUNINGS: readonly CatalogueTuning[] = [
 
 /** Other instruments: MEI Guidelines for the lutes, the rest from memory. Re-entrant ones are not sorted by pitch. */
 export const OTHER_TUNINGS: readonly CatalogueTuning[] = [
-  row('Renaissance lute in G', 'G2 C3 F3 A3 D4 G4'),
-  row('Baroque lute, D minor, upper six courses', 'A2 D3 F3 A3 D4 F4'),
-  row('Mandolin', 'G3 D4 A4 E5'),
-  row('Tenor guitar', 'C3 G3 D4 A4'),
-  row('Baritone ukulele', 'D3 G3 B3 E4'),
-  row('Ukulele', 'G4 C4 E4 A4'),
+  on('lute')('Renaissance lute in G', 'G2 C3 F3 A3 D4 G4'),
+  on('lute')('Baroque lute, D minor, upper six courses', 'A2 D3 F3 A3 D4 F4'),
+  on('mandolin')('Mandolin', 'G3 D4 A4 E5'),
+  on('tenor guitar')('Tenor guitar', 'C3 G3 D4 A4'),
+  on('baritone ukulele')('Baritone ukulele', 'D3 G3 B3 E4'),
+  on('ukulele')('Ukulele', 'G4 C4 E4 A4'),
+  { ...on('banjo')('Banjo, open G', 'G4 D3 G3 B3 D4'), lastStringFrom: 5 },
+  on('seven-string guitar')('Seven strings', 'B1 E2 A2 D3 G3 B3 E4'),
+  on('eight-string guitar')('Eight strings', 'F#1 B1 E2 A2 D3 G3 B3 E4'),
 ]
 
 export const catalogue: readonly CatalogueTuning[] = [STANDARD, ...GUITAR_TUNINGS, ...OTHER_TUNINGS]
 
 /** As the score keeps strings: string 1 first. */
-export const stringsOf = (tuning: CatalogueTuning): OpenString[] => tuning.pitches.map(pitch => ({ pitch })).reverse()
+export const stringsOf = (tuning: CatalogueTuning): OpenString[] => tuning.pitches
+  .map((pitch, index) => (index === 0 && tuning.lastStringFrom ? { pitch, from: tuning.lastStringFrom } : { pitch })).reverse()
+
+const sound = (pitches: readonly string[]): string => pitches.map(midiOfText).join()
+
+/** The entries that sound like these strings (string 1 first), however either is spelled. */
+export const entriesFor = (strings: readonly OpenString[]): readonly CatalogueTuning[] => {
+  const sought = sound(strings.map(({ pitch }) => pitch).reverse())
+  return catalogue.filter(({ pitches }) => sound(pitches) === sought)
+}

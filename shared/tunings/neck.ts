@@ -1,5 +1,5 @@
 import { noteName, spell } from '../score/pitch'
-import { capoFret, openMidi } from '../score/sounding'
+import { capoFret, openMidi, type Strung } from '../score/sounding'
 import type { Head } from '../score/types'
 
 /** Distance of a fret from the nut as a part of the scale length: 1 − 2^(−fret/12), twelve equal steps to the octave. */
@@ -21,12 +21,12 @@ export interface NeckPlace {
 const MAJOR: readonly number[] = [0, 2, 4, 5, 7, 9, 11]
 
 /** Name of the note that sounds at a fret counted from the nut, spelled in the sounding key. */
-export const nameAt = (head: Head, string: number, fret: number, fifths: number): string =>
+export const nameAt = (head: Strung, string: number, fret: number, fifths: number): string =>
   noteName(spell(openMidi(head, string) + fret - capoFret(head, string), fifths))
 
 /** Every fretted place above the capo, up to the last fret, at which a note of the key sounds.
  * @param fifths the sounding key's signature, −7 to 7 */
-export function scalePlaces(head: Head, fifths: number): readonly NeckPlace[] {
+export function scalePlaces(head: Pick<Head, 'strings' | 'capos' | 'instrument'>, fifths: number): readonly NeckPlace[] {
   const chromas = new Set(MAJOR.map(step => (((step + 7 * fifths) % 12) + 12) % 12))
   return head.strings.flatMap((_, index) => {
     const string = index + 1

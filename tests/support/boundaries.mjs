@@ -3,6 +3,7 @@ const allowed = {
   'shared/score': [],
   'shared/edits': ['shared/score'],
   'shared/tunings': ['shared/score'],
+  'shared/hand': ['shared/score', 'shared/tunings'],
   'shared/formats': ['shared/score'],
   'shared/permissions': ['shared/score'],
   'shared/schemas': ['shared/score', 'shared/edits', 'shared/permissions'],
