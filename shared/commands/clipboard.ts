@@ -2,7 +2,6 @@ import type { Edit } from '../edits'
 import { cursorAt, placeOf, selectedBars, spansOf, type Clip, type EditorState, type EventRun, type IdSource, type Transaction } from '../editor'
 import { isFretOnNeck } from '../score/sounding'
 import { VOICE_NAMES, type Bar, type Head, type ScoreEvent, type Voice, type Voices } from '../score/types'
-import { removeBars } from './bar'
 import { replaceVoice, spliced } from './change'
 import { scoreCommand, type Command } from './command'
 import { keepingContexts, statedBar } from './contexts'
@@ -20,13 +19,13 @@ export function clipOf({ score, selection }: EditorState): Clip | null {
 
 function copy(state: EditorState): Transaction | null {
   const clip = clipOf(state)
-  return clip && { label: 'Copy', clip, selection: state.selection }
+  return clip && { label: 'Copy', clip }
 }
 
 /** Copies, then takes away: whole bars where they are selected whole, else the events with their time. */
 function cut(state: EditorState, ids: IdSource): Transaction | null {
   const clip = clipOf(state)
-  const removal = state.selection.whole ? removeBars(state, ids) : deleteEvent(state)
+  const removal = deleteEvent(state, ids)
   return clip && removal && { ...removal, label: 'Cut', clip }
 }
 

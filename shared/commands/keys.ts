@@ -3,6 +3,7 @@
  * KeyboardEvent.key (W3C UI Events). Mod is Ctrl, on macOS Cmd; Jump is Ctrl, on macOS Option (as in text fields there).
  * Shift counts for letters and named keys; for other characters the character typed already says it.
  */
+import { readBinding } from './binding'
 import type { Command, CommandContext } from './command'
 import { commands } from './registry'
 import { positionCharacter } from './layout'
@@ -31,11 +32,10 @@ const isLetter = (key: string): boolean => /^\p{L}$/u.test(key)
 
 /** A binding as one platform delivers it: "ctrl+shift+z". */
 export function chordOf(binding: string, platform: Platform): string {
-  const parts = binding.endsWith('++') ? [...binding.slice(0, -2).split('+'), '+'] : binding.split('+')
-  const key = parts.at(-1)!
+  const { held, key } = readBinding(binding)
   const mac = platform === 'mac'
-  const held = new Set(parts.slice(0, -1).map(part => ({ Mod: mac ? 'meta' : 'ctrl', Jump: mac ? 'alt' : 'ctrl', Shift: 'shift' })[part] ?? part))
-  return chord(key === 'Space' ? ' ' : key, held)
+  const modifiers = { Mod: mac ? 'meta' : 'ctrl', Jump: mac ? 'alt' : 'ctrl', Shift: 'shift' }
+  return chord(key === 'Space' ? ' ' : key, new Set(held.map(modifier => modifiers[modifier])))
 }
 
 function chord(key: string, held: ReadonlySet<string>): string {

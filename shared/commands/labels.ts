@@ -1,3 +1,4 @@
+import { readBinding } from './binding'
 import type { Platform } from './keys'
 
 const NAMES: Readonly<Record<string, string>> = {
@@ -9,9 +10,7 @@ const MAC_MODIFIERS = [['Jump', '⌥'], ['Shift', '⇧'], ['Mod', '⌘']] as con
 
 /** A binding as people read it: "Ctrl K", on macOS "⌘K". Plain letters stay small, as they are typed without Shift. */
 export function keyLabel(binding: string, platform: Platform = 'other'): string {
-  const parts = binding.endsWith('++') ? [...binding.slice(0, -2).split('+'), '+'] : binding.split('+')
-  const held = parts.slice(0, -1)
-  const key = parts.at(-1)!
+  const { held, key } = readBinding(binding)
   const name = (platform === 'mac' ? MAC_NAMES[key] : undefined) ?? NAMES[key] ?? (held.length && key.length === 1 ? key.toUpperCase() : key)
   if (platform === 'mac') return MAC_MODIFIERS.filter(([modifier]) => held.includes(modifier)).map(([, sign]) => sign).join('') + name
   return [...held.map(modifier => (modifier === 'Shift' ? 'Shift' : 'Ctrl')), name].join(' ')

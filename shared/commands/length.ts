@@ -1,6 +1,5 @@
 import type { Edit } from '../edits'
-import { placeOf, type EditorState, type IdSource, type Transaction } from '../editor'
-import { spansOf } from '../editor'
+import { placeOf, spansOf, type EditorState, type IdSource, type Transaction } from '../editor'
 import { compare, equals, fraction, sum, type Fraction } from '../score/fraction'
 import { plainLength } from '../score/time'
 import { BASES, type Base, type Length, type ScoreEvent, type Tuplet } from '../score/types'
@@ -70,7 +69,7 @@ export function toggleTriplet(state: EditorState, ids: IdSource): Transaction | 
   const [span] = spans
   const first = span?.voice.events[span.from]
   if (!span || !first) return { label, notice: 'Write the first note of the triplet, then make it one.' }
-  if (spans.length > 1) return { label, notice: 'A triplet stands within one bar.' }
+  if (spans.length > 1 || state.selection.whole) return { label, notice: 'A triplet stands within one voice of one bar.' }
   const { bar, name, voice, from, to } = span
   const inner = first.length.tuplets?.at(-1)
   if (inner) {

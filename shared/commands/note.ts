@@ -1,6 +1,7 @@
-import { cursorAt, placeOf, spansOf, type EditorState, type IdSource, type Place, type Transaction } from '../editor'
+import { cursorAt, EMPTY_VOICE, END, placeOf, spansOf, type EditorState, type IdSource, type Place, type Transaction } from '../editor'
 import { PARTIAL_AT_FRET } from '../score/sounding'
 import type { Bar, Head, LinkKind, Note, RingRule } from '../score/types'
+import { removeBars } from './bar'
 import { changeEvents, replaceVoice, spliced, without, withNote, withNotes } from './change'
 import { scoreCommand, type Command } from './command'
 import { newEvent } from './entry'
@@ -62,6 +63,7 @@ export function toggleHarmonic(state: EditorState): Transaction {
   const found = deciding(state)
   if (!found) return noNote(state, label)
   if (found.note.harmonic) {
+    if (!Number.isInteger(found.note.fret)) return { label, notice: 'This harmonic is touched between frets: type the fret to stop instead.' }
     return changeNotes(state, label, note => (Number.isInteger(note.fret) ? without(note, 'harmonic') : note))
   }
   if (!PARTIAL_AT_FRET[found.note.fret]) {
@@ -118,20 +120,19 @@ export function deleteNote(state: EditorState): Transaction | null {
 }
 
 function clearBars({ score, selection }: EditorState): Transaction {
-  const edits = spansOf(score, selection).flatMap(({ bar }) => (['upper', 'lower', 'middle'] as const).flatMap(name =>
-    bar.voices[name] ? [replaceVoice(bar, name, { events: [] })] : []))
-  const { cursor } = selection
-  return { label: 'Empty the bars', edits, selection: { cursor: { ...cursor, eventId: 'end' }, anchor: null } }
+  const edits = spansOf(score, selection).flatMap(({ bar, name }) => (bar.voices[name] ? [replaceVoice(bar, name, EMPTY_VOICE)] : []))
+  return { label: 'Empty the bars', edits, selection: { cursor: { ...selection.cursor, eventId: END }, anchor: null } }
 }
 
-/** Takes away the event under the cursor or all that are selected, with their time; the cursor stays at the place. */
-export function deleteEvent(state: EditorState): Transaction | null {
+/** Takes away the event under the cursor or all that are selected, with their time; the cursor stays at the place. Whole bars go as bars. */
+export function deleteEvent(state: EditorState, ids: IdSource): Transaction | null {
   const { score, selection } = state
+  if (selection.whole) return removeBars(state, ids)
   const spans = spansOf(score, selection)
   const edits = spans.flatMap(({ bar, name, voice, from, to }) => (to > from ? [replaceVoice(bar, name, spliced(voice, from, to, []))] : []))
   const first = spans[0]
   if (!first || !edits.length) return null
-  const left = first.voice.events[first.to]?.id ?? 'end'
+  const left = first.voice.events[first.to]?.id ?? END
   return { label: 'Delete event', edits, selection: { cursor: { ...selection.cursor, barId: first.bar.id, eventId: left }, anchor: null } }
 }
 

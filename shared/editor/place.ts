@@ -1,7 +1,7 @@
 import { contextOf, type Context } from '../score/context'
 import { add, compare, isLess, type Fraction } from '../score/fraction'
 import { lengthOf, startsOf, voiceTotal } from '../score/time'
-import type { Bar, Note, Score, ScoreEvent, Voice, VoiceName } from '../score/types'
+import { VOICE_NAMES, type Bar, type Note, type Score, type ScoreEvent, type Voice, type VoiceName } from '../score/types'
 import { END, type Cursor, type Selection } from './state'
 
 export const EMPTY_VOICE: Voice = { events: [] }
@@ -51,27 +51,41 @@ export const cursorAt = (bar: Bar, voice: VoiceName, at: number, string: number)
 /** Part of a selection: the events from `from` up to, not including, `to` of one voice of one bar. */
 export interface Span { readonly index: number, readonly bar: Bar, readonly name: VoiceName, readonly voice: Voice, readonly from: number, readonly to: number }
 
-/** What is selected, bar by bar in reading order: without an anchor the event under the cursor (none at the end). */
-export function spansOf(score: Score, selection: Selection): readonly Span[] {
-  const { cursor, anchor } = selection
+interface Spot { readonly index: number, readonly at: number }
+interface Range { readonly first: Spot, readonly last: Spot }
+
+function rangeOf(score: Score, { cursor, anchor }: Selection): Range {
   const here = placeOf(score, cursor)
   const there = anchor ? placeOf(score, anchor) : here
   const anchorAt = anchor && anchor.voice !== cursor.voice
     ? eventAt(there.bar.voices[cursor.voice] ?? EMPTY_VOICE, momentOf(there.voice, there.at))
     : there.at
-  const ends = [{ index: here.index, at: here.at }, { index: there.index, at: anchorAt }]
-  const [first, last] = ends.sort((a, b) => a.index - b.index || a.at - b.at) as [typeof ends[0], typeof ends[0]]
-  return score.bars.slice(first.index, last.index + 1).map((bar, offset) => {
+  const [one, other] = [{ index: here.index, at: here.at }, { index: there.index, at: anchorAt }]
+  return (one.index - other.index || one.at - other.at) < 0 ? { first: one, last: other } : { first: other, last: one }
+}
+
+/** What is selected, bar by bar in reading order: without an anchor the event under the cursor (none at the end), of whole bars every voice. */
+export function spansOf(score: Score, selection: Selection): readonly Span[] {
+  const { first, last } = rangeOf(score, selection)
+  const { voice: own } = selection.cursor
+  return score.bars.slice(first.index, last.index + 1).flatMap((bar, offset) => {
     const index = first.index + offset
-    const voice = bar.voices[cursor.voice] ?? EMPTY_VOICE
-    const from = index === first.index && !selection.whole ? first.at : 0
-    const to = index === last.index && !selection.whole ? Math.min(last.at + 1, voice.events.length) : voice.events.length
-    return { index, bar, name: cursor.voice, voice, from, to }
+    const names = selection.whole ? VOICE_NAMES.filter(name => name === own || bar.voices[name]) : [own]
+    return names.map((name): Span => {
+      const voice = bar.voices[name] ?? EMPTY_VOICE
+      const count = voice.events.length
+      const from = index === first.index && !selection.whole ? first.at : 0
+      const to = index === last.index && !selection.whole ? Math.min(last.at + 1, count) : count
+      return { index, bar, name, voice, from, to }
+    })
   })
 }
 
 /** The bars that the selection touches, in order. */
-export const selectedBars = (score: Score, selection: Selection): readonly Bar[] => spansOf(score, selection).map(span => span.bar)
+export function selectedBars(score: Score, selection: Selection): readonly Bar[] {
+  const { first, last } = rangeOf(score, selection)
+  return score.bars.slice(first.index, last.index + 1)
+}
 
 /** A selection with its cursors set on what is still there: after others' edits, an undo, a load. The bar at the old position's side is unknown, so a lost bar reads as the first. */
 export function settleSelection(score: Score, selection: Selection): Selection {
