@@ -1,9 +1,17 @@
-import { ZERO, add, divide, fraction, type Fraction } from '../../score/fraction'
-import { beatOf, isCompound, lengthOf } from '../../score/time'
-import type { Meter, ScoreEvent, Voice } from '../../score/types'
+import { fraction, type Fraction } from '../../score/fraction'
+import { beatOf, isCompound } from '../../score/time'
+import type { Meter, ScoreEvent } from '../../score/types'
 
-/** `beam` of MusicXML: its value by level, level 1 first; an empty list where an event has none. */
+/** `beam` of MusicXML: its value by level, level 1 first. */
 export type BeamValue = 'begin' | 'continue' | 'end' | 'forward hook' | 'backward hook'
+
+export interface BeamTime {
+  readonly meter: Meter
+  /** Ticks of a whole note. */
+  readonly whole: number
+  /** Ticks by which the bar begins late in its meter: a pickup ends with the bar. */
+  readonly offset: number
+}
 
 /** Span within which eighths are joined: the beat; in 3/8 the bar; in 5/8 or 7/8 two eighths (common practice). */
 function beamSpan(meter: Meter): Fraction {
@@ -14,27 +22,25 @@ function beamSpan(meter: Meter): Fraction {
 const levelsOf = (event: ScoreEvent): number => (event.notes.length ? Math.max(0, Math.log2(event.length.base) - 2) : 0)
 
 /** Runs of neighbours (positions in the voice) that share beams. */
-function groupsOf(voice: Voice, meter: Meter, offset: Fraction): number[][] {
+function groupsOf(events: readonly ScoreEvent[], durations: readonly number[], { meter, whole, offset }: BeamTime): number[][] {
   const span = beamSpan(meter)
   const groups: number[][] = []
   let at = offset
   let last = -1
-  voice.events.forEach((event, index) => {
-    const beats = divide(at, span)
-    const beat = Math.floor(beats.n / beats.d)
+  events.forEach((event, index) => {
+    const beat = Math.floor(at * span.d / (span.n * whole))
     if (levelsOf(event) > 0) {
       const open = groups.at(-1)
       if (open && beat === last && open.at(-1) === index - 1) open.push(index)
       else groups.push([index])
     }
     last = beat
-    at = add(at, lengthOf(event.length, voice.tuplets))
+    at += durations[index] ?? 0
   })
   return groups.filter(group => group.length > 1)
 }
 
-function valueAt(levels: readonly number[], index: number, level: number): BeamValue | null {
-  if ((levels[index] ?? 0) < level) return null
+function valueAt(levels: readonly number[], index: number, level: number): BeamValue {
   const before = (levels[index - 1] ?? 0) >= level
   const after = (levels[index + 1] ?? 0) >= level
   if (before) return after ? 'continue' : 'end'
@@ -42,19 +48,13 @@ function valueAt(levels: readonly number[], index: number, level: number): BeamV
   return index === 0 ? 'forward hook' : 'backward hook'
 }
 
-/** Beams of a voice, by position of its events.
- * @param offset where the bar begins in its meter, in whole notes: a pickup ends with the bar */
-export function beamsOf(voice: Voice, meter: Meter, offset: Fraction = ZERO): ReadonlyMap<number, readonly BeamValue[]> {
+/** Beams of a voice, by position of its events. */
+export function beamsOf(events: readonly ScoreEvent[], durations: readonly number[], time: BeamTime): ReadonlyMap<number, readonly BeamValue[]> {
   const beams = new Map<number, readonly BeamValue[]>()
-  for (const group of groupsOf(voice, meter, offset)) {
-    const levels = group.map(index => levelsOf(voice.events[index]!))
+  for (const group of groupsOf(events, durations, time)) {
+    const levels = group.map(index => levelsOf(events[index]!))
     group.forEach((position, index) => {
-      const values: BeamValue[] = []
-      for (let level = 1; level <= (levels[index] ?? 0); level++) {
-        const value = valueAt(levels, index, level)
-        if (value) values.push(value)
-      }
-      beams.set(position, values)
+      beams.set(position, Array.from({ length: levels[index] ?? 0 }, (_, level) => valueAt(levels, index, level + 1)))
     })
   }
   return beams

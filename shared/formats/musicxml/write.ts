@@ -1,14 +1,13 @@
 import { DEFAULT_KEY, DEFAULT_METER, contextsOf, type Context } from '../../score/context'
 import { fifthsOf, parsePitch, STEPS, type Spelling } from '../../score/pitch'
 import { capoOffset } from '../../score/sounding'
-import { barLength, lengthOf, meterLength } from '../../score/time'
-import { compare } from '../../score/fraction'
 import { STANDARD_TUNING } from '../../score/create'
-import { VOICE_NAMES, type Bar, type Head, type Key, type Meter, type Score } from '../../score/types'
+import type { Bar, Head, Key, Meter, Score } from '../../score/types'
 import { changedStrings, raisedKey, scoreStatement } from '../statement'
 import { linksOf } from './links'
+import { planOf } from './plan'
 import { FIELD, RING_WORDS, SOFTWARE, caposText, isPlainSetup, staffTuning, stringsText } from './terms'
-import { barXml, offsetOf, wordsXml } from './writeBar'
+import { createBarPieces, wordsXml, writeBar } from './writeBar'
 import { around, empty, leaf } from './xml'
 
 /**
@@ -26,50 +25,25 @@ export interface WriteOptions {
 export function writeMusicXml(score: Score, options: WriteOptions = {}): string {
   const contexts = contextsOf(score)
   const links = linksOf(score)
-  const divisions = divisionsOf(score, contexts)
-  const isPickup = hasPickup(score, contexts)
-  const parts: string[] = [
+  const plan = planOf(score, contexts)
+  const pieces = createBarPieces()
+  const out: string[] = [
     '<?xml version="1.0" encoding="UTF-8"?>\n<score-partwise version="4.0">\n',
     titleXml(score.head), identificationXml(score, options), PART_LIST, '<part id="P1">\n',
   ]
   score.bars.forEach((bar, index) => {
     const context = contexts[index]!
     const isFirst = index === 0
-    const attributes = isFirst ? firstAttributes(context, divisions) : changedAttributes(bar, context)
+    const attributes = isFirst ? firstAttributes(context, plan.divisions) : changedAttributes(bar, context)
     const opening = isFirst ? openingXml(score) : ''
-    const given = { context, links, divisions, offset: offsetOf(bar, context, index) }
-    const number = isPickup ? index : index + 1
-    parts.push(`<measure number="${number}"${isFirst && isPickup ? ' implicit="yes"' : ''}>`,
-      barXml(bar, given, attributes, opening, index === score.bars.length - 1), '</measure>\n')
+    const given = { context, links, plan: plan.bars[index]!, pieces }
+    const number = plan.hasPickup ? index : index + 1
+    out.push(`<measure number="${number}"${isFirst && plan.hasPickup ? ' implicit="yes"' : ''}>`)
+    writeBar(out, bar, given, attributes, opening, index === score.bars.length - 1)
+    out.push('</measure>\n')
   })
-  parts.push('</part>\n</score-partwise>\n')
-  return parts.join('')
-}
-
-function hasPickup(score: Score, contexts: readonly Context[]): boolean {
-  const [bar] = score.bars
-  const [context] = contexts
-  return bar !== undefined && context !== undefined && compare(barLength(bar, context.meter), meterLength(context.meter)) < 0
-}
-
-const gcd = (a: number, b: number): number => (b === 0 ? a : gcd(b, a % b))
-
-/** The fewest divisions of a whole note, a multiple of four, in which every length of the score is whole. */
-function divisionsOf(score: Score, contexts: readonly Context[]): number {
-  let result = 4
-  const include = (denominator: number) => {
-    if (result % denominator === 0) return
-    result = result / gcd(result, denominator) * denominator
-    if (!Number.isSafeInteger(result)) throw new RangeError('the lengths of this score are too fine for MusicXML')
-  }
-  score.bars.forEach((bar, index) => {
-    include(barLength(bar, contexts[index]!.meter).d)
-    for (const name of VOICE_NAMES) {
-      const voice = bar.voices[name]
-      for (const event of voice?.events ?? []) include(lengthOf(event.length, voice?.tuplets).d)
-    }
-  })
-  return result
+  out.push('</part>\n</score-partwise>\n')
+  return out.join('')
 }
 
 const titleXml = (head: Head): string => around('work', head.title && leaf('work-title', head.title))
@@ -118,7 +92,7 @@ function changedAttributes(bar: Bar, { head }: Context): string {
 
 function firstAttributes({ head, key, meter }: Context, divisions: number): string {
   const lines = head.strings.length
-  return around('attributes', leaf('divisions', divisions / 4) + keyXml(key ?? DEFAULT_KEY, head) + meterXml(meter ?? DEFAULT_METER)
+  return around('attributes', leaf('divisions', divisions) + keyXml(key ?? DEFAULT_KEY, head) + meterXml(meter ?? DEFAULT_METER)
     + '<staves>2</staves><part-symbol>bracket</part-symbol><clef number="1"><sign>G</sign><line>2</line></clef>'
     + `<clef number="2"><sign>TAB</sign><line>${lines - 1}</line></clef>`
     + tabDetails(head) + transposeXml(head, key))

@@ -1,23 +1,23 @@
-import { ZERO, compare, equals, subtract, toNumber, type Fraction } from '../../score/fraction'
-import { barLength, lengthOf, meterLength, playedLength, plainLength, voiceTotal } from '../../score/time'
+import { toNumber } from '../../score/fraction'
+import { plainLength } from '../../score/time'
 import type { Context } from '../../score/context'
-import { VOICE_NAMES, type Bar, type Tempo, type Voice, type VoiceName } from '../../score/types'
-import { beamsOf, type BeamValue } from './beams'
+import type { Bar, Tempo, Voice, VoiceName } from '../../score/types'
+import type { BeamValue } from './beams'
 import type { Links } from './links'
+import type { BarPlan, VoicePlan } from './plan'
 import { FEATURE, RING_WORDS, TAB_VOICE_OFFSET, TYPE_NAMES, VOICE_NUMBERS } from './terms'
-import { eventXml, type EventFrame, type NoteContext, type Staff } from './writeNote'
+import { createPieces, writeEvent, type EventFrame, type NoteContext, type Pieces, type Staff } from './writeNote'
 import { empty, leaf } from './xml'
 
 export interface BarContext {
   readonly context: Context
   readonly links: Links
-  /** Divisions of a whole note. */
-  readonly divisions: number
-  /** A pickup starts late in its meter. */
-  readonly offset: Fraction
+  readonly plan: BarPlan
+  readonly pieces: Record<Staff, Pieces>
 }
 
-const NO_BEAMS: ReadonlyMap<number, readonly BeamValue[]> = new Map()
+export const createBarPieces = (): Record<Staff, Pieces> => ({ 1: createPieces(), 2: createPieces() })
+
 const NOTHING: readonly never[] = []
 
 function frameOf(voice: Voice, index: number, duration: number, beams: readonly BeamValue[] | undefined): EventFrame {
@@ -41,42 +41,30 @@ function stemOf(name: VoiceName, staff: Staff): NoteContext['stem'] {
   return name === 'middle' ? '' : name === 'upper' ? 'up' : 'down'
 }
 
-const ticks = (length: Fraction, divisions: number): number => length.n * (divisions / length.d)
-
-function voiceXml(name: VoiceName, voice: Voice, staff: Staff, bar: BarContext): string {
-  const { context, links, divisions, offset } = bar
+function writeVoice(out: string[], { name, voice, durations, beams }: VoicePlan, staff: Staff, bar: BarContext): void {
+  const { context, links, pieces } = bar
   const note: NoteContext = {
-    head: context.head, key: context.key, links, staff, stem: stemOf(name, staff),
+    head: context.head, key: context.key, links, staff, stem: stemOf(name, staff), pieces: pieces[staff],
     voiceNumber: VOICE_NUMBERS[name] + (staff === 2 ? TAB_VOICE_OFFSET : 0),
   }
-  const beams = staff === 1 ? beamsOf(voice, context.meter, offset) : NO_BEAMS
-  let result = ''
   voice.events.forEach((event, index) => {
-    const duration = ticks(lengthOf(event.length, voice.tuplets), divisions)
-    result += eventXml(event, voice, frameOf(voice, index, duration, beams.get(index)), note)
+    const frame = frameOf(voice, index, durations[index] ?? 0, staff === 1 ? beams.get(index) : undefined)
+    writeEvent(out, event, voice, frame, note)
   })
-  return result
 }
 
 /** One staff's voices, each from the bar's start; the last is followed by what fills the bar. */
-function staffXml(bar: Bar, staff: Staff, played: Fraction, given: BarContext): string {
-  const names = VOICE_NAMES.filter(name => bar.voices[name]?.events.length)
-  const whole = ticks(played, given.divisions)
-  if (!names.length) {
+function writeStaff(out: string[], staff: Staff, given: BarContext): void {
+  const { voices, played } = given.plan
+  if (!voices.length) {
     const voice = VOICE_NUMBERS.upper + (staff === 2 ? TAB_VOICE_OFFSET : 0)
-    return `<note><rest measure="yes"/><duration>${whole}</duration><voice>${voice}</voice><staff>${staff}</staff></note>`
+    out.push(`<note><rest measure="yes"/><duration>${played}</duration><voice>${voice}</voice><staff>${staff}</staff></note>`)
   }
-  let result = ''
-  names.forEach((name, index) => {
-    const voice = bar.voices[name]
-    if (!voice) return
-    result += voiceXml(name, voice, staff, given)
-    const total = ticks(voiceTotal(voice), given.divisions)
-    const isLast = index === names.length - 1
-    if (!isLast) result += backup(total)
-    else if (total < whole) result += `<forward><duration>${whole - total}</duration></forward>`
+  voices.forEach((voice, index) => {
+    writeVoice(out, voice, staff, given)
+    if (index < voices.length - 1) out.push(backup(voice.total))
+    else if (voice.total < played) out.push(`<forward><duration>${played - voice.total}</duration></forward>`)
   })
-  return result
 }
 
 const backup = (duration: number): string => `<backup><duration>${duration}</duration></backup>`
@@ -92,17 +80,11 @@ function tempoXml(tempo: Tempo): string {
 export const wordsXml = (words: string): string =>
   `<direction placement="above"><direction-type>${leaf('words', words)}</direction-type><staff>1</staff></direction>`
 
-/** The bar's own length where a reader can't tell it from what stands in the bar. */
-function lengthFeature(bar: Bar, context: Context, played: Fraction): string {
-  const meter = meterLength(context.meter)
-  const own = barLength(bar, context.meter)
-  const isReadable = equals(played, own) && (bar.length === undefined) === equals(own, meter)
-  if (isReadable) return ''
-  return leaf('feature', bar.length ? `${bar.length.n}/${bar.length.d}` : 'meter', { type: FEATURE.length })
-}
-
-function featuresXml(bar: Bar, context: Context, played: Fraction): string {
-  const features = lengthFeature(bar, context, played) + (bar.ring ? leaf('feature', bar.ring, { type: FEATURE.ring }) : '')
+/** The bar's own length where a reader can't tell it from what stands in the bar, and its ring rule. */
+function featuresXml(bar: Bar, { isLengthReadable }: BarPlan): string {
+  const length = bar.length ? `${bar.length.n}/${bar.length.d}` : 'meter'
+  const features = (isLengthReadable ? '' : leaf('feature', length, { type: FEATURE.length }))
+    + (bar.ring ? leaf('feature', bar.ring, { type: FEATURE.ring }) : '')
   return features && `<grouping type="single">${features}</grouping>`
 }
 
@@ -116,17 +98,13 @@ function closingXml(bar: Bar, isLast: boolean): string {
   return isLast ? '<barline location="right"><bar-style>light-heavy</bar-style></barline>' : ''
 }
 
-/** What stands between the opening and the closing tag of a measure.
+/** Adds what stands between the opening and the closing tag of a measure to `out`.
  * @param opening attributes and directions of the piece's start, for the first bar */
-export function barXml(bar: Bar, given: BarContext, attributes: string, opening: string, isLast: boolean): string {
-  const played = playedLength(bar, given.context.meter)
-  return (bar.repeatStart ? START_REPEAT : '') + attributes + featuresXml(bar, given.context, played)
-    + opening + (bar.tempo ? tempoXml(bar.tempo) : '') + (bar.ring ? wordsXml(RING_WORDS[bar.ring]) : '')
-    + staffXml(bar, 1, played, given) + backup(ticks(played, given.divisions)) + staffXml(bar, 2, played, given) + closingXml(bar, isLast)
-}
-
-/** Where a first bar shorter than its meter begins in it. */
-export function offsetOf(bar: Bar, context: Context, index: number): Fraction {
-  const missing = subtract(meterLength(context.meter), barLength(bar, context.meter))
-  return index === 0 && compare(missing, ZERO) > 0 ? missing : ZERO
+export function writeBar(out: string[], bar: Bar, given: BarContext, attributes: string, opening: string, isLast: boolean): void {
+  out.push(bar.repeatStart ? START_REPEAT : '', attributes, featuresXml(bar, given.plan), opening,
+    bar.tempo ? tempoXml(bar.tempo) : '', bar.ring ? wordsXml(RING_WORDS[bar.ring]) : '')
+  writeStaff(out, 1, given)
+  out.push(backup(given.plan.played))
+  writeStaff(out, 2, given)
+  out.push(closingXml(bar, isLast))
 }

@@ -18,7 +18,15 @@ export interface NoteContext {
   readonly voiceNumber: number
   readonly staff: Staff
   readonly stem: '' | 'up' | 'down' | 'none'
+  readonly pieces: Pieces
 }
+
+/**
+ * Notes written before, for one staff while the key holds: a piece has some hundreds of different plain notes and writes
+ * them thousands of times. Looking them up is what makes 400 bars fast.
+ */
+export interface Pieces { key: Key | null, readonly notes: Map<number, string> }
+export const createPieces = (): Pieces => ({ key: null, notes: new Map() })
 
 /** What all notes of one event share. */
 export interface EventFrame {
@@ -41,10 +49,14 @@ function pitchOf(note: Note, { head, key, staff }: NoteContext): Spelling {
   return { ...written, octave: written.octave + 1 }
 }
 
+interface LinkXml { readonly technical: string, readonly slurs: string, readonly ties: string, readonly tieds: string }
+const UNLINKED: LinkXml = { technical: '', slurs: '', ties: '', tieds: '' }
+
 /** Slurred links carry the string as their number, so that links on two strings may overlap. A middle note stops, then starts. */
-function linkTechnical(note: Note, { leaving, arriving }: Links): { technical: string, slurs: string, ties: string, tieds: string } {
+function linkXml(note: Note, { leaving, arriving }: Links): LinkXml {
   const from = arriving.get(note)
   const to = leaving.get(note)
+  if (!from && !to) return UNLINKED
   const result = { technical: '', slurs: '', ties: '', tieds: '' }
   if (from === 'tie') {
     result.ties += '<tie type="stop"/>'
@@ -108,31 +120,63 @@ function tupletXml(frame: EventFrame): string {
   return starts.join('') + frame.tupletStops.map(level => `<tuplet type="stop" number="${level}"/>`).join('')
 }
 
-/** All `note` elements of an event on one staff. */
-export function eventXml(event: ScoreEvent, voice: Voice, frame: EventFrame, context: NoteContext): string {
-  const { type, modification } = timeXml(event, voice, context)
-  const duration = `<duration>${frame.duration}</duration>`
-  const tuplets = frame.tupletStarts.length || frame.tupletStops.length ? tupletXml(frame) : ''
-  const staff = `<staff>${context.staff}</staff>`
+/** Adds all `note` elements of an event on one staff to `out`. */
+export function writeEvent(out: string[], event: ScoreEvent, voice: Voice, frame: EventFrame, context: NoteContext): void {
   if (!event.notes.length) {
-    const notations = tuplets && `<notations>${tuplets}</notations>`
-    return `<note${event.hidden ? ' print-object="no"' : ''}><rest/>${duration}${type}${modification}${staff}${notations}</note>`
+    out.push(restXml(event, voice, frame, context))
+    return
   }
-  const stem = context.stem && `<stem>${context.stem}</stem>`
-  const beams = frame.beams.map((value, index) => `<beam number="${index + 1}">${value}</beam>`).join('')
-  let result = ''
+  const { pieces, key } = context
+  if (pieces.key !== key) {
+    pieces.key = key
+    pieces.notes.clear()
+  }
   event.notes.forEach((note, index) => {
-    const first = index === 0
-    const links = linkTechnical(note, context.links)
-    const place = context.staff === 2 ? `<string>${note.string}</string><fret>${Math.round(note.fret)}</fret>` : ''
-    const technical = place + links.technical + (note.harmonic ? HARMONIC : '')
-    const letRing = note.ring === 'let-ring' ? '<tied type="let-ring"/>' : ''
-    const notations = links.tieds + letRing + links.slurs + (first ? tuplets : '') + (technical && `<technical>${technical}</technical>`)
-    result += `<note>${first ? '' : '<chord/>'}${pitchXml(pitchOf(note, context))}${duration}${links.ties}${type}${modification}${stem}`
-      + headXml(note, context.staff) + staff + (first ? beams : '') + (notations && `<notations>${notations}</notations>`)
-      + (context.staff === 2 ? ownData(note, context) : '') + '</note>'
+    const known = isPlain(note, event, context.links) ? plainKey(note, event, frame, context, index === 0) : null
+    let xml = known === null ? undefined : pieces.notes.get(known)
+    if (xml === undefined) {
+      xml = noteXml(note, event, voice, frame, context, index === 0)
+      if (known !== null) pieces.notes.set(known, xml)
+    }
+    out.push(xml)
   })
-  return result
+}
+
+/** Nothing but a place and a length. */
+const isPlain = (note: Note, event: ScoreEvent, links: Links): boolean =>
+  !event.length.tuplets?.length && !note.harmonic && !note.dead && !note.ring && !note.link && !note.spelling && !links.arriving.has(note)
+
+const BEAM_DIGITS: Readonly<Record<BeamValue, number>> = { 'begin': 1, 'continue': 2, 'end': 3, 'forward hook': 4, 'backward hook': 5 }
+
+/** A number for everything that a plain note's text depends on: place, length, voice, place in the chord, beams. */
+function plainKey(note: Note, { length }: ScoreEvent, { beams }: EventFrame, { voiceNumber }: NoteContext, isFirst: boolean): number {
+  const beamed = isFirst ? beams.reduce((value, each) => value * 6 + BEAM_DIGITS[each], 0) : 0
+  const place = note.string * 40 + note.fret
+  const time = Math.log2(length.base) * 4 + length.dots
+  return (((place * 28 + time) * 4 + voiceNumber % 4) * 2 + (isFirst ? 1 : 0)) * 1296 + beamed
+}
+
+function restXml(event: ScoreEvent, voice: Voice, frame: EventFrame, context: NoteContext): string {
+  const { type, modification } = timeXml(event, voice, context)
+  const tuplets = tupletXml(frame)
+  const notations = tuplets && `<notations>${tuplets}</notations>`
+  return `<note${event.hidden ? ' print-object="no"' : ''}><rest/><duration>${frame.duration}</duration>${type}${modification}<staff>${context.staff}</staff>${notations}</note>`
+}
+
+function noteXml(note: Note, event: ScoreEvent, voice: Voice, frame: EventFrame, context: NoteContext, isFirst: boolean): string {
+  const { type, modification } = timeXml(event, voice, context)
+  const links = linkXml(note, context.links)
+  const place = context.staff === 2 ? `<string>${note.string}</string><fret>${Math.round(note.fret)}</fret>` : ''
+  const technical = place + links.technical + (note.harmonic ? HARMONIC : '')
+  const letRing = note.ring === 'let-ring' ? '<tied type="let-ring"/>' : ''
+  const notations = links.tieds + letRing + links.slurs + (isFirst ? tupletXml(frame) : '') + (technical && `<technical>${technical}</technical>`)
+  const beams = isFirst ? frame.beams.map((value, index) => `<beam number="${index + 1}">${value}</beam>`).join('') : ''
+  // Joined, not added up: the text is kept and copied many times.
+  return [
+    isFirst ? '<note>' : '<note><chord/>', pitchXml(pitchOf(note, context)), `<duration>${frame.duration}</duration>`, links.ties,
+    type, modification, context.stem && `<stem>${context.stem}</stem>`, headXml(note, context.staff), `<staff>${context.staff}</staff>`, beams,
+    notations && `<notations>${notations}</notations>`, context.staff === 2 ? ownData(note, context) : '', '</note>',
+  ].join('')
 }
 
 function headXml(note: Note, staff: Staff): string {

@@ -12,5 +12,5 @@ describe('MusicXML out and in', () => {
       expect(withPlainIds(result.score)).toEqual(withPlainIds(score))
       expect(result.remarks).toEqual([])
     }), { numRuns: 100 })
-  })
+  }, 60_000)
 })

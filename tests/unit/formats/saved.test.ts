@@ -25,7 +25,7 @@ describe('saved form', () => {
       expect(validateScore(each)).toBeNull()
       expect(readSaved(writeSaved(each))).toEqual({ score: each })
     }), { numRuns: 60 })
-  })
+  }, 60_000)
   it('states tuning and capo', () => {
     expect(JSON.parse(writeSaved(score))).toMatchObject({
       format: 'copperwound-score', version: 1, statement: 'Tuning C2 G2 D3 G3 C4 D4 (⑥ = C2, ⑤ = G2, ② = C4, ① = D4).',
@@ -38,7 +38,7 @@ describe('saved form', () => {
       return Object.fromEntries(Object.entries(value).reverse().map(([key, each]) => [key, reversed(each)]))
     }
     fc.assert(fc.property(scoreArbitrary(2), each => canonical(reversed(each)) === canonical(each)), { numRuns: 30 })
-  })
+  }, 60_000)
   it('hashes with SHA-256 (FIPS 180-4), as Node computes it', async () => {
     expect(await contentHash(score)).toBe(createHash('sha256').update(canonical(score)).digest('hex'))
     expect(await contentHash({ ...score, head: { ...score.head, rights: undefined as unknown as string } })).not.toBe(await contentHash(score))
