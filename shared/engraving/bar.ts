@@ -54,6 +54,7 @@ function engrave(bar: Bar, { context, carried, pickup }: BarSurroundings): BarNo
     events, beams, tab, links, slices, total, missing,
     tuplets: voices.flatMap(name => tupletsOf(bar, name, beamed, stems, voices.length)),
     surplus: surplusOf(bar, context),
+    isPolyphonic: voices.length > 1,
     top: Math.min(0, ...reaches.map(each => each.top)),
     bottom: Math.max(40, ...reaches.map(each => each.bottom)),
     body: bodyWidth(slices, missing), least: leastWidth(slices),
@@ -117,10 +118,10 @@ function staffEvent(each: Placed, moments: readonly Fraction[], stems: ReadonlyM
 /** Touched places need not be whole frets. */
 const fretText = (note: Note): string => (Number.isInteger(note.fret) ? `${note.fret}` : note.fret.toFixed(1))
 
-/** What the tab says of a note: x dead, ‹12› harmonic at its touched place, (3) tied over. */
+/** What the tab says of a note: × dead, <12> harmonic at its touched place, (3) tied over. */
 export function tabText(note: Note, isTied: boolean): string {
   if (note.dead) return '×'
-  const text = note.harmonic ? `‹${fretText(note)}›` : fretText(note)
+  const text = note.harmonic ? `<${fretText(note)}>` : fretText(note)
   return isTied ? `(${text})` : text
 }
 

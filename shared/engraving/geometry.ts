@@ -24,7 +24,7 @@ export interface BarGeometry {
 }
 
 /** The open end of a full bar lies just before the bar line. */
-const END_INSET = 9
+const END_INSET = 11
 
 /** @param prefix points that clef, key and meter take */
 export function geometryOf(notation: BarNotation, prefix: number, width: number): BarGeometry {

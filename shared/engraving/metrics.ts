@@ -11,7 +11,7 @@ export const STEM_LENGTH = 35
 /** From a bar line (or what stands behind it) to the first notehead. */
 export const LEAD = 16
 /** Least room between the last event of a bar and the bar line, where the open end of a voice lies. */
-export const TAIL = 14
+export const TAIL = 19
 /** Least room between two columns. */
 export const GAP = 4
 

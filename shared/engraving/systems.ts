@@ -11,7 +11,7 @@ export interface Role {
   /** First in its system: clef, key and bar number. */
   readonly opens: boolean
   readonly key: Key | null
-  /** Signature that a change to fewer accidentals cancels. */
+  /** Signature that a change to none cancels; before other signatures naturals are not needed (Gould, "Key signatures"). */
   readonly cancels: number
   readonly meter: Meter | null
   readonly repeatStart: boolean
@@ -53,18 +53,15 @@ export function roleAt(score: Score, index: number, opens: boolean): Role {
   return {
     opens,
     key: opens || keyChanges ? here.key : null,
-    cancels: keyChanges && (Math.abs(here.key.fifths) < Math.abs(before.key.fifths) || here.key.fifths * before.key.fifths < 0) ? before.key.fifths : 0,
+    cancels: keyChanges && here.key.fifths === 0 ? before.key.fifths : 0,
     meter: !before || !sameMeter(before.meter, here.meter) ? here.meter : null,
     repeatStart: !!bar.repeatStart,
     right: bar.repeatEnd ? 'repeat' : isLast ? 'final' : contexts[index + 1]!.key.fifths !== here.key.fifths ? 'double' : 'single',
   }
 }
 
-/** Naturals of a cancelled signature that the new one does not overrule. */
-export const cancelledCount = (role: Role): number => {
-  const kept = role.key && role.key.fifths * role.cancels > 0 ? Math.abs(role.key.fifths) : 0
-  return Math.max(0, Math.abs(role.cancels) - kept)
-}
+/** Naturals that a change to no signature shows. */
+export const cancelledCount = (role: Role): number => Math.abs(role.cancels)
 
 /** Points that clef, key, meter and repeat sign take before a bar's body. */
 export function prefixWidth(role: Role): number {

@@ -83,6 +83,8 @@ export interface BarNotation {
   readonly links: readonly Link[]
   readonly slices: readonly Slice[]
   readonly surplus: readonly Surplus[]
+  /** More than one voice sounds: stems, ties and rests keep apart. */
+  readonly isPolyphonic: boolean
   /** Time the bar takes: what it is meant to hold, or its longest voice where that is more. */
   readonly total: Fraction
   /** Time that no voice fills yet; null when some voice does. */

@@ -17,6 +17,8 @@ export interface DrawnBar extends BarKey {
   readonly group: SVGGElement
   /** Moves down when the staff above needs room. */
   readonly tab: SVGGElement
+  /** y at which the tab stands now. */
+  tabTop: number
   readonly geometry: BarGeometry
   readonly heads: ReadonlyMap<string, Head>
 }
@@ -37,5 +39,5 @@ export function drawBar(pen: Pen, key: BarKey): DrawnBar {
   const links = drawInnerLinks(key.notation, geometry, staff.heads)
   const tab = drawTab(key.notation, geometry, key.strings)
   tab.append(links.tab)
-  return { ...key, geometry, heads: staff.heads, tab, group: svg('g', {}, staff.group, links.staff, tab, ...surplusMarks(key)) }
+  return { ...key, geometry, heads: staff.heads, tab, tabTop: 0, group: svg('g', {}, staff.group, links.staff, tab, ...surplusMarks(key)) }
 }

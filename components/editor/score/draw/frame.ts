@@ -20,8 +20,8 @@ export interface FrameMeasures { readonly strings: number, readonly tabTop: numb
 
 const y = (position: number): number => STAFF_HEIGHT - position * 5
 
-function signature(key: Key, cancels: number, cancelled: number, x: number): Element[] {
-  const old = (cancels > 0 ? SHARPS : FLATS).slice(Math.abs(cancels) - cancelled, Math.abs(cancels))
+function signature(key: Key, cancels: number, x: number): Element[] {
+  const old = (cancels > 0 ? SHARPS : FLATS).slice(0, Math.abs(cancels))
   const own = (key.fifths > 0 ? SHARPS : FLATS).slice(0, Math.abs(key.fifths))
   return [...old.map(position => [NATURAL, position] as const), ...own.map(position => [key.fifths > 0 ? SHARP : FLAT, position] as const)]
     .map(([code, position], index) => glyph(code, x + index * KEY_ACCIDENTAL_WIDTH, y(position)))
@@ -30,7 +30,7 @@ function signature(key: Key, cancels: number, cancelled: number, x: number): Ele
 function meterDigits(meter: Meter, x: number): Element[] {
   const number = (value: number): string => String.fromCodePoint(...[...`${value}`].map(digit => DIGIT + Number(digit)))
   return [[meter.beats, 10], [meter.unit, 30]].map(([value, height]) =>
-    svg('text', { 'x': at(x), 'y': height!, 'font-family': 'Bravura', 'font-size': 40, 'text-anchor': 'middle', 'fill': 'currentColor' }, number(value!)))
+    svg('text', { 'x': at(x), 'y': height!, 'font-family': 'Bravura', 'font-size': 40, 'text-anchor': 'middle' }, number(value!)))
 }
 
 function tabClef(strings: number, tabTop: number): Element {
@@ -47,14 +47,14 @@ function prefix(bar: PlacedBar, { strings, tabTop }: FrameMeasures, number: numb
   let x = bar.x
   if (role.opens) {
     parts.push(glyph(CLEF_8_BELOW, x + 8, 30), tabClef(strings, tabTop))
-    if (number > 0) parts.push(words(`${number}`, x + 2, -12, { 'font-family': 'Alegreya Sans', 'font-size': 12, 'class': 'sheet-soft' }))
+    if (number > 0) parts.push(words(`${number}`, x - 1, -21, { 'font-family': 'Alegreya Sans', 'font-size': 12, 'class': 'sheet-soft' }))
     x += CLEF_WIDTH
   }
   const cancelled = cancelledCount(role)
   const accidentals = (role.key ? Math.abs(role.key.fifths) : 0) + cancelled
   if (role.key && accidentals) {
     if (!role.opens) x += 8
-    parts.push(...signature(role.key, role.cancels, cancelled, x))
+    parts.push(...signature(role.key, role.cancels, x))
     x += accidentals * KEY_ACCIDENTAL_WIDTH + 6
   }
   if (role.meter) {
@@ -71,7 +71,7 @@ const line = (x: number, top: number, bottom: number, width: number): Element =>
 /** Two dots on the staff's and the tab's middle spaces, thick and thin line; `side` 1 opens, −1 closes. */
 function repeatSign(x: number, side: 1 | -1, { strings, tabTop }: FrameMeasures): Element[] {
   const bottom = tabTop + tabHeight(strings)
-  const dot = (dy: number): Element => svg('circle', { cx: at(x + side * 9.5), cy: at(dy), r: 2, fill: 'currentColor' })
+  const dot = (dy: number): Element => svg('circle', { cx: at(x + side * 9.5), cy: at(dy), r: 2 })
   const middle = tabTop + tabHeight(strings) / 2
   return [line(x + side * 1.5, 0, bottom, 3.2), line(x + side * 5.5, 0, bottom, 1), dot(15), dot(25), dot(middle - STRING_SPACE / 2), dot(middle + STRING_SPACE / 2)]
 }

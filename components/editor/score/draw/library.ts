@@ -1,4 +1,4 @@
-import { quickMeasuring } from './quick'
+import { quickLookup, quickMeasuring } from './quick'
 
 export type Vex = typeof import('vexflow/core')
 
@@ -25,5 +25,6 @@ async function load(): Promise<Vex> {
   ])
   vex.VexFlow.setFonts('Bravura')
   vex.Element.setTextMeasurementCanvas(quickMeasuring(document.createElement('canvas')))
+  vex.Metrics.get = quickLookup(vex.Metrics.get.bind(vex.Metrics)) as typeof vex.Metrics.get
   return vex
 }

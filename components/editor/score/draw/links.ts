@@ -11,6 +11,8 @@ export interface LinkParts { readonly staff: SVGGElement, readonly tab: SVGGElem
 const LETTER = { 'tie': '', 'hammer-on': 'H', 'pull-off': 'P' } as const
 /** Length of a link whose note is not there yet. */
 const STUB = 22
+/** Room before the first head of a system. */
+const ENTRY = 15
 
 function endOf(noteId: string, notation: BarNotation, geometry: BarGeometry, heads: ReadonlyMap<string, Head>, side: 'left' | 'right'): End | null {
   const head = heads.get(noteId)
@@ -27,9 +29,15 @@ export const goalOf = (link: Link, notation: BarNotation, geometry: BarGeometry,
 
 const shift = (end: End, by: number): End => ({ ...end, staffX: end.staffX + by, tabX: end.tabX + by })
 
+/** A lone voice bows its links at the heads, away from the stems; with two voices a tie bows to its voice's side (Gould, "Ties"). */
+function sideOf(link: Link, start: End, isPolyphonic: boolean): 1 | -1 {
+  if (isPolyphonic && link.kind === 'tie' && link.voice !== 'middle') return link.voice === 'upper' ? -1 : 1
+  return start.stem === 1 ? 1 : -1
+}
+
 /** One link between two ends; a missing end is made up: at the line's edge, or a stub. Incomplete links are dashed. */
-export function drawLink(link: Link, start: End, goal: End, complete: boolean): { staff: Element, tab: Element[] } {
-  const side = start.stem === 1 ? 1 : -1
+export function drawLink(link: Link, start: End, goal: End, complete: boolean, isPolyphonic: boolean): { staff: Element, tab: Element[] } {
+  const side = sideOf(link, start, isPolyphonic)
   const look: Readonly<Record<string, string | number>> = complete ? {} : { 'fill': 'none', 'stroke': 'currentColor', 'stroke-width': 1.1, 'stroke-dasharray': '3 2.5', 'class': 'sheet-soft' }
   const isTie = link.kind === 'tie'
   // A tie runs from edge to edge of its heads, a slur from middle to middle.
@@ -53,7 +61,7 @@ export function drawInnerLinks(notation: BarNotation, geometry: BarGeometry, hea
   return collect(notation.links.flatMap((link) => {
     const start = startOf(link, notation, geometry, heads)
     const goal = goalOf(link, notation, geometry, heads)
-    return start && goal ? [drawLink(link, start, goal, link.complete)] : []
+    return start && goal ? [drawLink(link, start, goal, link.complete, notation.isPolyphonic)] : []
   }))
 }
 
@@ -70,16 +78,16 @@ export function drawCrossingLinks(bars: readonly LinkedBar[], next: BarNotation 
       const from = shift(start, bar.x)
       const met = (after?.notation ?? next)?.links.find(each => each.from === null && each.voice === link.voice && each.string === link.string)
       const goal = met && after ? goalOf(met, after.notation, after.geometry, after.heads) : null
-      if (goal && after) return [drawLink(link, from, shift(goal, after.x), met!.complete)]
+      if (goal && after) return [drawLink(link, from, shift(goal, after.x), met!.complete, notation.isPolyphonic)]
       const edge = met ? width - 2 : Math.min(width - 2, from.staffX + STUB)
-      return [drawLink(link, from, { ...from, staffX: edge, tabX: Math.max(edge, from.tabX + 8) }, !!met?.complete)]
+      return [drawLink(link, from, { ...from, staffX: edge, tabX: Math.max(edge, from.tabX + 8) }, !!met?.complete, notation.isPolyphonic)]
     })
     // What comes over from the system before starts behind the clef.
     const entering = index > 0
       ? []
       : notation.links.filter(link => link.from === null).flatMap((link) => {
           const goal = goalOf(link, notation, geometry, heads)
-          return goal ? [drawLink(link, { ...goal, staffX: goal.staffX - STUB, tabX: goal.tabX - STUB }, goal, link.complete)] : []
+          return goal ? [drawLink(link, shift(goal, -ENTRY), goal, link.complete, notation.isPolyphonic)] : []
         })
     return [...leaving, ...entering]
   }))

@@ -2,8 +2,8 @@ import { STRING_SPACE, tabHeight, type BarGeometry, type System } from '#shared/
 import { END, type Cursor } from '#shared/editor/state'
 import { at, svg } from './svg'
 
-const COLUMN = 24
-const CELL = { width: 23, height: 19 }
+const COLUMN = 22
+const CELL = { width: 22, height: 19 }
 /** How far the column's box reaches beyond the outer strings. */
 const OVERLAP = 14
 
@@ -16,13 +16,29 @@ export function columnX(geometry: BarGeometry, cursor: Pick<Cursor, 'voice' | 'e
   return event?.x ?? geometry.ends[cursor.voice]
 }
 
-/** Box around the column in the tab, and around the cell of the cursor's string. `x` from the system's left edge. */
-export function drawCursor(x: number, string: number, strings: number, tabTop: number): readonly SVGElement[] {
-  const y = tabTop + (string - 1) * STRING_SPACE
-  return [
-    box(x - COLUMN / 2, tabTop - OVERLAP, COLUMN, tabHeight(strings) + 2 * OVERLAP, 'cursor-column'),
-    box(x - CELL.width / 2, y - CELL.height / 2, CELL.width, CELL.height, 'cursor-cell'),
-  ]
+/** Box around the column in the tab, and around the cell of the cursor's string; its nodes are moved, never made anew. */
+export class CursorBox {
+  private readonly column = box(0, 0, COLUMN, 0, 'cursor-column')
+  private readonly cell = box(0, 0, CELL.width, CELL.height, 'cursor-cell')
+  private readonly group = svg('g', {}, this.column, this.cell)
+  private stood = ''
+
+  /** @param x from the system's left edge */
+  place(layer: SVGGElement, x: number, string: number, strings: number, tabTop: number): void {
+    const height = tabHeight(strings) + 2 * OVERLAP
+    if (this.group.parentNode !== layer) layer.append(this.group)
+    const column = `translate(${at(x - COLUMN / 2)} ${at(tabTop - OVERLAP)})`
+    if (this.stood !== `${column} ${height}`) {
+      this.group.setAttribute('transform', column)
+      this.column.setAttribute('height', `${height}`)
+      this.stood = `${column} ${height}`
+    }
+    this.cell.setAttribute('y', `${at(OVERLAP + (string - 1) * STRING_SPACE - CELL.height / 2)}`)
+  }
+
+  hide(): void {
+    this.group.remove()
+  }
 }
 
 /** A selected stretch of a system, over staff and tab. */

@@ -1,15 +1,18 @@
 /** The library's two costly habits, met from outside: it deep-clones small records by the thousand, and measures the same glyphs anew. */
 
-type Cloneable = Readonly<Record<string, unknown>>
-
 /** A copy two levels deep. The library clones flat records of numbers, texts and, at most, one list. */
 export function quickClone<T>(value: T): T {
-  if (typeof value !== 'object' || value === null) return value
-  const copy = Array.isArray(value) ? [...value] : { ...value as Cloneable }
-  for (const [key, inner] of Object.entries(copy)) {
-    if (typeof inner === 'object' && inner !== null) (copy as Record<string, unknown>)[key] = Array.isArray(inner) ? [...inner] : { ...inner as Cloneable }
+  const copy = shallow(value)
+  for (const key in copy) {
+    const inner = copy[key]
+    if (typeof inner === 'object') copy[key] = shallow(inner)
   }
-  return copy as T
+  return copy
+}
+
+function shallow<T>(value: T): T {
+  if (typeof value !== 'object' || value === null) return value
+  return (Array.isArray(value) ? [...value] : { ...value }) as T
 }
 
 /** Runs one drawing, synchronously, with quick clones in place of structured ones. */
@@ -21,6 +24,18 @@ export function withQuickClones<T>(draw: () => T): T {
   }
   finally {
     globalThis.structuredClone = original
+  }
+}
+
+type Lookup = (key: string, fallback?: unknown) => unknown
+
+/** The library's table of measures by dotted key, remembering what it looked up. Its fonts must be set before. */
+export function quickLookup(lookup: Lookup): Lookup {
+  const found = new Map<string, unknown>()
+  return (key, fallback) => {
+    let value = found.get(key)
+    if (value === undefined && !found.has(key)) found.set(key, value = lookup(key))
+    return value ?? fallback
   }
 }
 

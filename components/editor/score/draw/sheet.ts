@@ -3,7 +3,7 @@ import { END, type Cursor, type Selection } from '#shared/editor/state'
 import type { Bar, Score } from '#shared/score/types'
 import type { DrawnBar } from './bar'
 import type { LaneLine } from './lanes'
-import { columnX, drawCursor, drawPlaying, drawSelection, stretchIn } from './overlay'
+import { CursorBox, columnX, drawPlaying, drawSelection, stretchIn } from './overlay'
 import { createPen, type Pen } from './staff'
 import { SystemView } from './systemView'
 import type { Vex } from './library'
@@ -28,6 +28,8 @@ export class Sheet {
   private bars = new Map<string, DrawnBar>()
   private selection: Selection | null = null
   private playing: Playing | null = null
+  private readonly cursorBox = new CursorBox()
+  private readonly highlights: SVGElement[] = []
   private width = 0
   private scale = 1
   private settling: ReturnType<typeof setTimeout> | undefined
@@ -38,12 +40,13 @@ export class Sheet {
     this.pen = createPen(vex)
   }
 
-  /** Shows a score; draws the bars that differ from the one shown before. */
-  show(score: Score): void {
+  /** Shows a score with its cursor; draws the bars that differ from the one shown before. */
+  show(score: Score, selection: Selection | null): void {
     const before = this.score
     this.score = score
+    this.selection = selection
     if (!before || !this.width) return this.rebuild()
-    if (before === score) return
+    if (before === score) return this.drawOverlay()
     const changed = changedBars(before, score)
     if (changed) this.redraw(before, score, changed)
     else if (!this.append(before, score)) this.rebuild()
@@ -58,11 +61,6 @@ export class Sheet {
     this.width = width
     this.scale = scale
     this.rebuild(true)
-  }
-
-  showSelection(selection: Selection | null): void {
-    this.selection = selection
-    this.drawOverlay()
   }
 
   showPlaying(playing: Playing | null): void {
@@ -280,19 +278,18 @@ export class Sheet {
 
   private drawOverlay(): void {
     const { score, selection } = this
-    for (const view of this.views) if (view.overlay.firstChild) view.overlay.replaceChildren()
+    for (const node of this.highlights.splice(0)) node.remove()
     if (!score) return
     const strings = score.head.strings.length
     if (selection?.anchor) this.drawStretch(selection.anchor, selection.cursor, strings)
     const cursor = selection && this.placeOf(selection.cursor)
-    if (cursor) {
-      const view = this.views[cursor.system]!
-      view.overlay.append(...drawCursor(cursor.x, selection.cursor.string, strings, view.tabTop))
-    }
+    const standing = cursor && this.views[cursor.system]
+    if (standing) this.cursorBox.place(standing.overlay, cursor.x, selection.cursor.string, strings, standing.tabTop)
+    else this.cursorBox.hide()
     const sounding = this.playing && this.placeOf({ barId: this.playing.barId, voice: 'upper', eventId: this.playing.eventIds[0] ?? END })
     if (sounding) {
       const view = this.views[sounding.system]!
-      view.overlay.append(drawPlaying(sounding.x, strings, view.tabTop))
+      this.highlight(view, drawPlaying(sounding.x, strings, view.tabTop))
     }
   }
 
@@ -302,8 +299,14 @@ export class Sheet {
     const [from, to] = ends.map(({ index, inBar, system }) => ({ index, x: inBar, system })).sort((a, b) => a.index - b.index || a.x - b.x)
     for (const view of this.views.slice(from!.system, to!.system + 1)) {
       const stretch = stretchIn(view.system, from!, to!)
-      if (stretch) view.overlay.append(drawSelection(stretch.from, stretch.to, strings, view.tabTop))
+      if (stretch) this.highlight(view, drawSelection(stretch.from, stretch.to, strings, view.tabTop))
     }
+  }
+
+  /** Highlights lie behind the cursor. */
+  private highlight(view: SystemView, node: SVGElement): void {
+    view.overlay.prepend(node)
+    this.highlights.push(node)
   }
 }
 

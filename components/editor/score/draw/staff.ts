@@ -1,11 +1,16 @@
 import { HEAD_WIDTH, STAFF_HEIGHT, yOfPosition, type BarNotation, type StaffEvent } from '#shared/engraving'
-import type { SVGContext, Stave, StaveNote } from 'vexflow/core'
+import type { BoundingBox, SVGContext, Stave, StaveNote } from 'vexflow/core'
 import type { Vex } from './library'
 import { withQuickClones } from './quick'
 import { arc, svg } from './svg'
 
 /** The library with what every drawing shares. */
-export interface Pen { readonly vex: Vex, readonly context: SVGContext, readonly stave: Stave }
+export interface Pen {
+  readonly vex: Vex
+  readonly context: SVGContext
+  readonly stave: Stave
+  readonly nowhere: BoundingBox
+}
 
 /** A head as ties and slurs meet it. */
 export interface Head { readonly left: number, readonly right: number, readonly y: number, readonly stem: 1 | -1 }
@@ -14,14 +19,16 @@ export interface StaffDrawing { readonly group: SVGGElement, readonly heads: Rea
 
 export function createPen(vex: Vex): Pen {
   const context = new vex.SVGContext(document.createElement('div'))
-  // Its rectangles for the pointer would double the nodes; a click is resolved by geometry.
+  // A group for every head and stem, and rectangles for the pointer, would treble the nodes; geometry tells what is clicked.
   context.pointerRect = () => context
+  context.openGroup = () => context.parent
+  context.closeGroup = () => {}
   const stave = new vex.Stave(0, -STAFF_HEIGHT, 100, { leftBar: false, rightBar: false })
   stave.setContext(context)
   // A note's x then is its column's.
   stave.setNoteStartX(-vex.Metrics.get('Stave.padding', 0))
   stave.setDefaultLedgerLineStyle({ strokeStyle: 'currentColor', lineWidth: 1.3 })
-  return { vex, context, stave }
+  return { vex, context, stave, nowhere: new vex.BoundingBox(0, 0, 0, 0) }
 }
 
 const ACCIDENTAL: Readonly<Record<number, string>> = { [-2]: 'bb', [-1]: 'b', 0: 'n', 1: '#', 2: '##' }
@@ -32,7 +39,7 @@ function headCode(event: StaffEvent, head: string): string {
   return head === 'diamond' ? `/D${filling}` : head === 'cross' ? `/X${filling}` : ''
 }
 
-function staveNote({ vex }: Pen, event: StaffEvent): StaveNote {
+function staveNote({ vex, nowhere }: Pen, event: StaffEvent): StaveNote {
   const isRest = event.notes.length === 0
   // A whole rest hangs from the line above the one that other rests stand on.
   const rest = REST_STEPS[Math.min(8, event.restPosition + (event.base === 1 && event.restPosition === 4 ? 2 : 0))]!
@@ -40,6 +47,8 @@ function staveNote({ vex }: Pen, event: StaffEvent): StaveNote {
     keys: isRest ? [rest] : event.notes.map(each => `${each.step.toLowerCase()}/${each.octave}${headCode(event, each.head)}`),
     duration: `${event.base}`, dots: event.dots, ...(isRest && { type: 'r' }), stemDirection: event.stem,
   })
+  // Only those rectangles ask for it, and it measures every part.
+  note.getBoundingBox = () => nowhere
   event.notes.forEach(({ accidental }, index) => {
     if (accidental !== null) note.addModifier(new vex.Accidental(ACCIDENTAL[accidental]!), index)
   })
@@ -63,6 +72,7 @@ function setColumn(pen: Pen, notes: readonly StaveNote[], x: number): void {
 /** Draws the notes, rests, beams and tuplets of a bar at the columns' x. The colour is the text colour of the place it stands in. */
 export const drawStaff = (pen: Pen, notation: BarNotation, columns: readonly number[]): StaffDrawing => withQuickClones(() => draw(pen, notation, columns))
 
+/** The library writes only what differs from its root's attributes; the group stands for that root, in the sheet's own colour. */
 function draw(pen: Pen, notation: BarNotation, columns: readonly number[]): StaffDrawing {
   const { vex, context } = pen
   const shown = notation.events.filter(event => !event.hidden)
@@ -76,27 +86,26 @@ function draw(pen: Pen, notation: BarNotation, columns: readonly number[]): Staf
     beam.breakSecondaryAt([...breaks])
     return beam
   })
-  const group = context.openGroup() as SVGGElement
+  const group = svg('g', { 'fill': 'currentColor', 'stroke': 'currentColor', 'stroke-width': 1, 'font-family': 'Bravura' })
+  context.parent = group
   for (const note of notes.values()) note.setContext(context).drawWithStyle()
   for (const beam of beams) beam.setContext(context).drawWithStyle()
   for (const tuplet of notation.tuplets) {
     const members = tuplet.eventIds.flatMap(id => notes.get(id) ?? [])
     if (members.length) new vex.Tuplet(members, { numNotes: tuplet.actual, notesOccupied: tuplet.normal, bracketed: tuplet.bracket, ratioed: false, location: tuplet.above ? 1 : -1 }).setContext(context).drawWithStyle()
   }
-  context.closeGroup()
-  group.remove()
-  return { group: wrap(group, shown, notes), heads: headsOf(shown, notes) }
+  group.append(...letRingMarks(shown, notes))
+  return { group, heads: headsOf(shown, notes) }
 }
 
-/** The library writes only what differs from its root's attributes; the wrapper stands for that root, in the sheet's own colour. */
-function wrap(drawn: SVGGElement, events: readonly StaffEvent[], notes: ReadonlyMap<string, StaveNote>): SVGGElement {
-  const rings = events.flatMap(event => event.notes.filter(note => note.letRing).map((note) => {
+/** An open tie behind a head that rings on. */
+function letRingMarks(events: readonly StaffEvent[], notes: ReadonlyMap<string, StaveNote>): readonly SVGPathElement[] {
+  return events.flatMap(event => event.notes.filter(note => note.letRing).map((note) => {
     const left = notes.get(event.eventId)!.getNoteHeadBeginX() + HEAD_WIDTH + 3
     const side = event.stem === 1 ? 1 : -1
     const y = yOfPosition(note.position) + 3 * side
     return arc(left, y, left + 15, y, side)
   }))
-  return svg('g', { 'fill': 'currentColor', 'stroke': 'currentColor', 'stroke-width': 1, 'font-family': 'Bravura' }, drawn, ...rings)
 }
 
 function headsOf(events: readonly StaffEvent[], notes: ReadonlyMap<string, StaveNote>): ReadonlyMap<string, Head> {

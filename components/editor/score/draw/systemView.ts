@@ -32,12 +32,12 @@ export class SystemView {
   top = 0
   height = 0
   isDrawn = false
-  private readonly drawing = svg('svg', { 'aria-hidden': 'true', 'focusable': 'false' })
+  private readonly drawing = svg('svg', { 'aria-hidden': 'true', 'focusable': 'false', 'fill': 'currentColor' })
   private readonly lanes = svg('g')
   private readonly barLayer = svg('g')
   private frame = svg('g')
   private links = svg('g')
-  private laneNodes = new Map<string, { lines: readonly LaneLine[], drawn: DrawnBar, node: SVGGElement }>()
+  private laneNodes = new Map<string, { lines: readonly LaneLine[], drawn: DrawnBar, x: number, node: SVGGElement }>()
 
   constructor(system: System, private score: Score, private readonly scale: number, private readonly surface: Surface) {
     this.system = system
@@ -59,7 +59,7 @@ export class SystemView {
   private place(): void {
     const strings = this.score.head.strings.length
     const { top, bottom, width } = this.system
-    this.top = Math.max(30, -top + ABOVE)
+    this.top = Math.max(36, -top + ABOVE)
     this.tabTop = Math.max(TAB_TOP, bottom + TAB_GAP)
     this.height = this.top + this.tabTop + tabHeight(strings) + (this.surface.lanesOf ? lanesHeight(strings) : LANES_TOP) + BELOW
     const [w, h] = [width + LEFT + 1, this.height]
@@ -135,6 +135,8 @@ export class SystemView {
   }
 
   private moveTab(drawn: DrawnBar): void {
+    if (drawn.tabTop === this.tabTop) return
+    drawn.tabTop = this.tabTop
     drawn.tab.setAttribute('transform', `translate(0 ${this.tabTop})`)
   }
 
@@ -160,6 +162,11 @@ export class SystemView {
 
   private drawLinks(): void {
     const after = this.system.bars.at(-1)!.index + 1
+    const isCrossed = this.system.bars.some(({ index }, position) => carriedOut(this.score.bars[index]).length > 0 || (position === 0 && carriedOut(this.score.bars[index - 1]).length > 0))
+    if (!isCrossed) {
+      if (this.links.firstChild) this.links.replaceChildren()
+      return
+    }
     const bars = this.system.bars.map((placed, position) => ({ ...this.barAt(position), x: placed.x }))
     const hasNext = after < this.score.bars.length && carriedOut(this.score.bars[after - 1]).length > 0
     const { staff, tab } = drawCrossingLinks(bars, hasNext ? notationAt(this.score, after) : undefined, this.system.width)
@@ -179,15 +186,12 @@ export class SystemView {
       const lines = lanesOf(score, placed.index)
       const drawn = this.barAt(position)
       const before = this.laneNodes.get(id)
-      if (before?.lines === lines && before.drawn === drawn) {
-        before.node.setAttribute('transform', `translate(${at(placed.x)} 0)`)
-        return
-      }
+      if (before?.lines === lines && before.drawn === drawn && before.x === placed.x) return
       before?.node.remove()
       const node = drawLanes(lines, drawn.geometry)
       node.setAttribute('transform', `translate(${at(placed.x)} 0)`)
       this.lanes.append(node)
-      this.laneNodes.set(id, { lines, drawn, node })
+      this.laneNodes.set(id, { lines, drawn, x: placed.x, node })
     })
     for (const [id, { node }] of this.laneNodes) {
       if (seen.has(id)) continue
