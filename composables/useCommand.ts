@@ -12,10 +12,11 @@ export function useCommand(id: string) {
   const command = commandById(id)
   if (!command) throw new RangeError(`no command ${id}`)
   const key = keysOf(command)[0]
+  const platform = usePlatform()
   return {
     command,
     /** "Ctrl Z"; null for a command without a key. */
-    keys: key === undefined ? null : keyLabel(key, usePlatform()),
+    keys: computed(() => (key === undefined ? null : keyLabel(key, platform.value))),
     /** Whether there is anything for it to do; asked only by what is on the screen. */
     enabled: computed(() => editor.state !== null && command.run(editor.state, editor.ids) !== null),
     run: () => editor.run(id),

@@ -22,7 +22,7 @@ export function useKeyboard(): (event: KeyboardEvent) => void {
   const platform = usePlatform()
   return (event) => {
     const context = event.defaultPrevented ? null : contextOfTarget(event.target, event.key)
-    const command = context && commandForKey(event, context, undefined, platform)
+    const command = context && commandForKey(event, context, undefined, platform.value)
     if (!command) return
     event.preventDefault()
     editor.run(command.id)
