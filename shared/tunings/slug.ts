@@ -10,10 +10,10 @@ import { respell } from './spelling'
 export const slugOf = (strings: readonly OpenString[]): string =>
   respell(strings).map(({ pitch }) => pitch.toLowerCase().replaceAll('#', 's')).reverse().join('-')
 
-export type ReadSlug =
-  | { readonly kind: 'tuning', readonly strings: readonly OpenString[], readonly slug: string }
-  | { readonly kind: 'redirect', readonly slug: string }
-  | { readonly kind: 'impossible', readonly problem: string, readonly field: string }
+export type ReadSlug
+  = | { readonly kind: 'tuning', readonly strings: readonly OpenString[], readonly slug: string }
+    | { readonly kind: 'redirect', readonly slug: string }
+    | { readonly kind: 'impossible', readonly problem: string, readonly field: string }
 
 const impossible = (field: string, problem: string): ReadSlug => ({ kind: 'impossible', field, problem })
 
