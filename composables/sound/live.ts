@@ -33,14 +33,17 @@ const decibels = (volume: number): number => 40 * Math.log10(Math.max(volume, 1e
  * @throws NoSound where there is none */
 export async function openSound(volume: number, hear: (message: FromStrings) => void): Promise<LiveSound> {
   if (typeof AudioContext === 'undefined') throw new NoSound('This browser has no Web Audio.')
+  if (typeof AudioWorkletNode === 'undefined') throw new NoSound('Audio worklets need a secure address.')
   const native = new AudioContext({ latencyHint: 'interactive' })
   const isAwake = () => native.state === 'running'
   // Asked for at once, while the key or click that led here still counts as the person's wish.
   const woken = native.resume()
-  if (!native.audioWorklet) throw new NoSound('Audio worklets need a secure address.')
   const context = new Context({ context: native, clockSource: 'timeout', lookAhead: 0 })
   setContext(context)
-  await context.addAudioWorkletModule(stringsUrl)
+  await context.addAudioWorkletModule(stringsUrl).catch(async (error: unknown) => {
+    await native.close()
+    throw error
+  })
   const strings = new AudioWorkletNode(native, PROCESSOR, { numberOfInputs: 0, outputChannelCount: [1] })
   const master = new Volume({ context, volume: decibels(volume) }).toDestination()
   connect(strings, master)
