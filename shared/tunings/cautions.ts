@@ -37,8 +37,8 @@ const stringCaution = (load: StringLoad): Caution[] =>
 
 export interface CapoAlternative { readonly capo: number, readonly strings: readonly OpenString[] }
 
-/** The same sound from lower strings behind a capo (fret 1 to 7): the lowest with which every string is in the green, else the lowest
- * with which none is red or slack; null where there is none. */
+/** The same sound from lower strings behind a capo (fret 1 to 7): the lowest with which no string is tighter than designed or
+ * loose, else the lowest with which none is red or slack; null where there is none. */
 export function capoAlternative(strings: readonly OpenString[], scaleLength: number, set: StringSet): CapoAlternative | null {
   const midis = strings.map(({ pitch }) => midiOfText(pitch))
   const lowered = [1, 2, 3, 4, 5, 6, 7].map((capo) => {
@@ -46,7 +46,7 @@ export function capoAlternative(strings: readonly OpenString[], scaleLength: num
     const lower = strings.map((open, index) => ({ ...open, pitch: pitchText(spelled[index]!) }))
     return { capo, strings: lower, load: loadOf(lower, scaleLength, set) }
   })
-  const found = lowered.find(({ load }) => load.strings.every(({ band }) => band === 'green'))
+  const found = lowered.find(({ load }) => load.strings.every(({ band, share }) => band === 'green' && share < 1.001))
     ?? lowered.find(({ load }) => !isGrave(load) && load.strings.every(({ band }) => band !== 'slack'))
   return found ? { capo: found.capo, strings: found.strings } : null
 }
