@@ -1,8 +1,11 @@
-import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest'
 import type { Edit } from '../../shared/edits'
 import type { Score } from '../../shared/score/types'
 import { parseScore } from '../support/score'
 import { createClient, demoClient, linkFor, startServer, type Client, type Running } from '../support/server'
+
+// A busy machine takes long to start a server.
+vi.setConfig({ testTimeout: 90_000, hookTimeout: 120_000 })
 
 let server: Running
 let maren: Client

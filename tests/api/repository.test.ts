@@ -1,4 +1,4 @@
-import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest'
 import fc from 'fast-check'
 import { and, eq } from 'drizzle-orm'
 import type { DbHandle } from '../../server/db/client'
@@ -15,6 +15,9 @@ import { applyEdits, isRefused, type Edit } from '../../shared/edits'
 import type { Score } from '../../shared/score/types'
 import { hasPostgres, memoryDatabase, migrations, startPostgres, type Postgres } from '../support/database'
 import { parseScore } from '../support/score'
+
+// A busy machine takes long to start a server.
+vi.setConfig({ testTimeout: 90_000, hookTimeout: 120_000 })
 
 const PORT = 4410
 let postgres: Postgres | undefined

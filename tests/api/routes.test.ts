@@ -1,7 +1,10 @@
 import { readdirSync } from 'node:fs'
-import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest'
 import { startMailServer, type MailServer } from '../support/mailServer'
 import { createClient, demoClient, startServer, type Client, type Running } from '../support/server'
+
+// A busy machine takes long to start a server.
+vi.setConfig({ testTimeout: 90_000, hookTimeout: 120_000 })
 
 /**
  * Every route of the API as a visitor, as a member who has no part in the arrangement, and as its arranger, on a server

@@ -49,7 +49,7 @@ export function launch(port: number, env: Record<string, string> = {}): Running 
 export async function ready(server: Running): Promise<Running> {
   let over = false
   void server.ended.then(() => (over = true))
-  for (let tries = 0; tries < 300 && !over; tries++) {
+  for (let tries = 0; tries < 1200 && !over; tries++) {
     const answer = await fetch(`${server.url}/api/ready`).catch(() => null)
     if (answer?.ok) return server
     await new Promise(done => setTimeout(done, 100))
