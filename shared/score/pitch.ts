@@ -11,7 +11,7 @@ const STEP_SEMITONES: Record<Step, number> = { C: 0, D: 2, E: 4, F: 5, G: 7, A: 
 
 /** Reads "C#4", "Bb3", "f♯2"; null where the text is no pitch. Octaves −1 to 9. */
 export function parsePitch(text: string): Spelling | null {
-  const match = /^([A-Ga-g])(##|bb|[#♯b♭]?)(-1|\d)$/.exec(text.trim())
+  const match = /^([A-Ga-g])(##|♯♯|bb|♭♭|[#♯b♭]?)(-1|\d)$/.exec(text.trim())
   if (!match) return null
   const accidental = match[2]!.replaceAll('♯', '#').replaceAll('♭', 'b')
   const alter = accidental.startsWith('b') ? -accidental.length : accidental.length
