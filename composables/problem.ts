@@ -19,8 +19,8 @@ export function problemOf(error: unknown): Problem {
     return { code, message: text(data.message) ?? text(body?.message) ?? 'The server refused this.', help: text(data.help), field: text(data.field) }
   }
   const status = isRecord(error) && typeof error.statusCode === 'number' ? error.statusCode : undefined
-  if (status === undefined) return { code: 'offline', message: 'The server did not answer.', help: 'Check your connection and try again. What you typed is still here.' }
-  if (status === 401) return { code: 'signed-out', message: 'You are no longer signed in.', help: 'Sign in again in another tab, then repeat this. What you typed is still here.' }
+  if (status === undefined) return { code: 'offline', message: 'The server did not answer.', help: 'Check your connection and try again. Nothing is lost.' }
+  if (status === 401) return { code: 'signed-out', message: 'You are no longer signed in.', help: 'Sign in again in another tab, then repeat this. Nothing is lost.' }
   if (status === 429) return { code: 'too-many', message: 'That was too often.', help: 'Wait a minute and try again.' }
-  return { code: `http-${status}`, message: 'The server could not do this.', help: 'Try again in a moment. What you typed is still here.' }
+  return { code: `http-${status}`, message: 'The server could not do this.', help: 'Try again in a moment. Nothing is lost.' }
 }

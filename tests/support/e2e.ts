@@ -19,3 +19,9 @@ export async function openDesk(page: Page, id: string): Promise<void> {
   await page.goto(`/arrangements/${id}`)
   await expect(page.getByTestId('score').locator('svg').first()).toBeVisible()
 }
+
+/** Opens a page and waits until it listens: what is pressed before that is lost, as it would be for a very quick person. */
+export async function visit(page: Page, path: string): Promise<void> {
+  await page.goto(path)
+  await page.waitForFunction(() => (window as { useNuxtApp?: () => { isHydrating?: boolean } }).useNuxtApp?.().isHydrating === false)
+}

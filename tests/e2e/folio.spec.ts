@@ -1,0 +1,122 @@
+import { expect, test, type Page } from '@playwright/test'
+import { createScore } from '../../shared/score/create'
+import { writeSaved } from '../../shared/formats/saved'
+import { keepScore, signInDemo, visit } from '../support/e2e'
+
+const row = (page: Page, title: string) => page.getByRole('row').filter({ has: page.getByRole('link', { name: title, exact: true }) })
+const act = async (page: Page, title: string, action: string) => {
+  await page.getByRole('button', { name: `Actions for ${title}`, exact: true }).click()
+  await page.getByRole('menuitem', { name: action }).click()
+}
+let bar = 0
+const keep = (page: Page, title: string, strings: string) =>
+  keepScore(page.request, createScore({ title, strings: strings.split(' ').map(pitch => ({ pitch })).reverse() }, () => `b${bar++}`))
+/** Titles of this run's own, since the demo's people are shared with other tests. */
+const own = (title: string) => `${title} ${Date.now().toString(36)}`
+
+test('an arrangement is made in a typed tuning', async ({ page }) => {
+  await signInDemo(page, 'ines.okafor')
+  await visit(page, '/folio')
+  await page.getByRole('button', { name: 'New arrangement…' }).click()
+  await expect(page.getByLabel('Title')).toBeFocused()
+  const title = own('Kelp Harvest')
+  await page.keyboard.type(title)
+  const typed = page.getByLabel('Strings, the lowest first')
+  await typed.fill('C2 G2 D3 G3 B3 H4')
+  await page.getByRole('button', { name: 'Make the arrangement' }).click()
+  await expect(typed).toBeFocused()
+  await expect(typed).toHaveAccessibleDescription(/String 1: “H4” is no pitch/)
+  await typed.fill('CGDGBD')
+  await expect(page.getByText('String 6 C2 · 5 G2 · 4 D3 · 3 G3 · 2 B3 · 1 D4')).toBeVisible()
+  await expect(page.getByRole('dialog').getByLabel('Tuning', { exact: true }).locator('option:checked')).toHaveText('Taro patch, C bass')
+  await page.getByLabel('Capo at fret').fill('2')
+  await page.getByLabel('Meter').selectOption('6/8')
+  await page.getByLabel('Pickup').selectOption('1 eighth')
+  await page.getByRole('button', { name: 'Make the arrangement' }).click()
+  await expect(page).toHaveURL(/\/arrangements\/[\w-]+$/)
+
+  await visit(page, '/folio')
+  await expect(row(page, title)).toContainText('C G D G B D, string 6 down 4, string 5 down 2, string 1 down 2')
+  await expect(row(page, title)).toContainText('capo 2')
+})
+
+test('rename, duplicate, mark, filter, sort and search', async ({ page }) => {
+  await signInDemo(page, 'ines.okafor')
+  const first = own('Ebb')
+  const renamed = own('Slack Tide')
+  await keep(page, first, 'D2 A2 D3 F#3 A3 C#4')
+  await visit(page, '/folio')
+  await act(page, first, 'Rename…')
+  await expect(page.getByRole('dialog').getByLabel('Title')).toHaveValue(first)
+  await page.getByRole('dialog').getByLabel('Title').fill(renamed)
+  await page.keyboard.press('Enter')
+  await expect(row(page, renamed)).toBeVisible()
+  await act(page, renamed, 'Mark as ready')
+  await expect(row(page, renamed)).toContainText('Ready')
+  await act(page, renamed, 'Duplicate')
+  await expect(page.getByRole('link', { name: renamed })).toHaveCount(2)
+
+  await visit(page, '/folio')
+  await page.getByLabel('Tuning', { exact: true }).selectOption('D A D F♯ A C♯')
+  await expect(page.getByRole('rowheader')).toHaveCount(2)
+  await page.getByLabel('State').selectOption('Ready')
+  await expect(page.getByRole('rowheader')).toHaveCount(1)
+  await page.getByLabel('State').selectOption('Any')
+  await page.getByRole('button', { name: 'Title', exact: true }).click()
+  await expect(page.getByRole('columnheader', { name: 'Title' })).toHaveAttribute('aria-sort', 'ascending')
+  await page.getByLabel('Search').fill('no such tune')
+  await page.getByRole('button', { name: /^Show all/ }).click()
+  await expect(page.getByRole('link', { name: renamed })).toHaveCount(2)
+})
+
+test('what was deleted comes back by one key', async ({ page }) => {
+  await signInDemo(page, 'ines.okafor')
+  const title = own('Sandbar')
+  await keep(page, title, 'C2 G2 D3 G3 C4 D4')
+  await visit(page, '/folio')
+  await page.getByRole('button', { name: `Actions for ${title}` }).focus()
+  for (const key of ['Enter', 'End', 'Enter']) await page.keyboard.press(key)
+  await expect(row(page, title)).toHaveCount(0)
+  await expect(page.getByRole('button', { name: 'Undo' })).toBeFocused()
+  await page.keyboard.press('Enter')
+  await expect(page.getByRole('link', { name: title })).toBeFocused()
+  await act(page, title, 'Delete')
+  await page.getByRole('button', { name: 'Dismiss' }).click()
+  await visit(page, '/folio')
+  await expect(row(page, title)).toHaveCount(0)
+})
+
+test('what the server refuses is put back and said', async ({ page }) => {
+  await signInDemo(page, 'ines.okafor')
+  const title = own('Groyne')
+  await keep(page, title, 'E2 A2 D3 G3 B3 E4')
+  await visit(page, '/folio')
+  await page.route('**/api/arrangements/*', route => (route.request().method() === 'GET' ? route.continue() : route.abort()))
+  await act(page, title, 'Delete')
+  await expect(page.getByRole('alert')).toContainText(`“${title}” was not deleted.The server did not answer.`)
+  await expect(row(page, title)).toBeVisible()
+  await act(page, title, 'Rename…')
+  await page.getByRole('dialog').getByLabel('Title').fill('Lost?')
+  await page.keyboard.press('Enter')
+  await expect(page.getByRole('dialog').getByRole('alert')).toContainText('The server did not answer.')
+  await expect(page.getByRole('dialog').getByLabel('Title')).toHaveValue('Lost?')
+  await page.unroute('**/api/arrangements/*')
+  await page.getByRole('dialog').getByRole('button', { name: 'Rename' }).click()
+  await expect(page.getByRole('dialog')).toHaveCount(0)
+  await expect(page.getByRole('link', { name: 'Lost?' }).first()).toBeVisible()
+})
+
+test('a saved file is shown before it is kept, and anything else is refused', async ({ page }) => {
+  await signInDemo(page, 'ines.okafor')
+  await visit(page, '/folio')
+  const title = own('Breakwater')
+  const file = page.getByLabel('File to import')
+  await file.setInputFiles({ name: 'photo.png', mimeType: 'image/png', buffer: Buffer.from([0x89, 0x50, 0x4E, 0x47]) })
+  await expect(page.getByRole('alert')).toContainText('photo.png is neither a saved arrangement')
+  await page.keyboard.press('Escape')
+  const saved = writeSaved(createScore({ title, strings: ['D4', 'A3', 'F3', 'C3', 'G2', 'C2'].map(pitch => ({ pitch })) }, () => 'b1'))
+  await file.setInputFiles({ name: 'breakwater.json', mimeType: 'application/json', buffer: Buffer.from(saved) })
+  await expect(page.getByRole('dialog')).toContainText('Tuning C2 G2 C3 F3 A3 D4')
+  await page.getByRole('button', { name: 'Keep it' }).click()
+  await expect(page).toHaveURL(/\/arrangements\/[\w-]+$/)
+})
