@@ -10,7 +10,7 @@ export function createLimiter(sampleRate: number): (samples: Float32Array) => vo
   return (samples) => {
     for (let i = 0; i < samples.length; i++) {
       const size = Math.abs(samples[i]!)
-      envelope = size > envelope ? size : envelope * release
+      envelope = Math.max(size, envelope * release)
       if (envelope > CEILING) samples[i]! *= CEILING / envelope
     }
   }
