@@ -5,6 +5,7 @@ import { CannotOpen, openDb, type Db, type DbHandle } from '../db/client'
 import { prepare } from '../db/migrate'
 import { config } from './config'
 import { layOutDemo } from './demo'
+import { tidy } from './tidy'
 
 interface Journal { readonly entries: readonly { readonly tag: string, readonly when: number, readonly breakpoints: boolean }[] }
 
@@ -24,7 +25,10 @@ async function open(): Promise<DbHandle> {
   const { databaseUrl, dataDir, demo } = config()
   const handle = await openDb({ url: databaseUrl, dataDir })
   try {
-    await prepare(handle, await readMigrations(), demo ? db => layOutDemo(db, hashPassword) : undefined)
+    await prepare(handle, await readMigrations(), async (db) => {
+      await tidy(db)
+      if (demo) await layOutDemo(db, hashPassword)
+    })
     return handle
   }
   catch (error) {

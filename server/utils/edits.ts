@@ -7,6 +7,7 @@ import type { Score } from '#shared/score/types'
 import type { Db } from '../db/client'
 import { arrangements, revisions } from '../db/schema'
 import { listed } from './arrangements'
+import { later } from './later'
 import { SNAPSHOT_EVERY, batchesAfter, remember, scoreAt, takeSnapshot } from './scores'
 
 export type SaveResult
@@ -45,16 +46,18 @@ async function append(tx: Db, save: Save, current: number): Promise<Written> {
   const next = applyAll(await scoreAt(tx, arrangementId, current), transactions)
   if (typeof next === 'string') return { result: { kind: 'refused', message: next } }
   const revision = current + 1
-  await tx.insert(revisions).values({ arrangementId, revision, clientId, seq, authorId, transactions })
+  const added = await tx.insert(revisions).values({ arrangementId, revision, clientId, seq, authorId, transactions }).onConflictDoNothing().returning({ revision: revisions.revision })
+  // The row is locked, so that only this client's number can stand in the way.
+  if (!added.length) return { result: (await earlier(tx, save))! }
   await tx.update(arrangements).set({ ...listed(next), revision, changedAt: new Date() }).where(eq(arrangements.id, arrangementId))
   return { result: { kind: 'saved', revision, repeated: false }, score: next }
 }
 
-async function settle(db: Db, arrangementId: string, { result, score }: Written): Promise<SaveResult> {
+function settle(db: Db, arrangementId: string, { result, score }: Written): SaveResult {
   if (result.kind !== 'saved' || !score) return result
   const current = { revision: result.revision, score }
   remember(arrangementId, current)
-  if (result.revision % SNAPSHOT_EVERY === 0) await takeSnapshot(db, arrangementId, current)
+  if (result.revision % SNAPSHOT_EVERY === 0) later('Taking a snapshot', () => takeSnapshot(db, arrangementId, current))
   return result
 }
 
@@ -62,10 +65,9 @@ async function settle(db: Db, arrangementId: string, { result, score }: Written)
 export async function saveEdits(db: Db, save: Save): Promise<SaveResult> {
   const written = await db.transaction(async (tx): Promise<Written> => {
     const current = await lockedRevision(tx, save.arrangementId)
+    if (save.base === current) return append(tx, save, current)
     const before = await earlier(tx, save)
-    if (before) return { result: before }
-    if (save.base !== current) return { result: { kind: 'stale', revision: current, missed: await batchesAfter(tx, save.arrangementId, save.base) } }
-    return append(tx, save, current)
+    return { result: before ?? { kind: 'stale', revision: current, missed: await batchesAfter(tx, save.arrangementId, save.base) } }
   })
   return settle(db, save.arrangementId, written)
 }

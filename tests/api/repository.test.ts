@@ -9,6 +9,7 @@ import { changePassword, confirm, openSession, register, resetPassword, sessionO
 import { createArrangement, deleteArrangement, duplicateArrangement, listArrangements, readArrangement, restoreArrangement, roleIn } from '../../server/utils/arrangements'
 import { DEMO_PEOPLE, layOutDemo } from '../../server/utils/demo'
 import { editsSince, rename, saveEdits, type Save } from '../../server/utils/edits'
+import { finishLater } from '../../server/utils/later'
 import { SNAPSHOT_EVERY } from '../../server/utils/scores'
 import { makeToken, useToken } from '../../server/utils/tokens'
 import { applyEdits, isRefused, type Edit } from '../../shared/edits'
@@ -94,6 +95,9 @@ describe.each(databases)('on $name', ({ there, open }) => {
         const id = await createArrangement(db(), author, piece)
         await saveEdits(db(), save(id, 1, 0, [lower(piece, 5)]))
         expect(await saveEdits(db(), save(id, 1, 0, [lower(piece, 6)]))).toMatchObject({ kind: 'refused' })
+        const { score } = await readArrangement(db(), id)
+        expect(await saveEdits(db(), save(id, 1, 1, [lower(score, 6)])), 'on the newest base as well').toMatchObject({ kind: 'refused' })
+        expect((await readArrangement(db(), id)).revision).toBe(1)
       })
 
       it('lets one of many saves at once through and tells the others what they missed', async () => {
@@ -145,6 +149,7 @@ describe.each(databases)('on $name', ({ there, open }) => {
           const applied = applyEdits(score, [edit])
           if (!isRefused(applied)) score = applied.score
         }
+        await finishLater()
         const taken = await db().select({ revision: snapshots.revision }).from(snapshots).where(eq(snapshots.arrangementId, id))
         expect(taken.map(each => each.revision).sort((a, b) => a - b)).toEqual([0, SNAPSHOT_EVERY])
         expect((await readArrangement(db(), id)).score).toEqual(score)
