@@ -4,7 +4,7 @@ import { arc, svg, words } from './svg'
 import { tabX } from './tab'
 
 /** Where a link starts or ends, on the staff and in the tab; x from the bar's left edge. */
-interface End { readonly staffX: number, readonly staffY: number, readonly tabX: number, readonly stem: 1 | -1 }
+interface End { readonly staffX: number, readonly staffY: number, readonly tip: number, readonly tabX: number, readonly stem: 1 | -1 }
 
 export interface LinkParts { readonly staff: SVGGElement, readonly tab: SVGGElement }
 
@@ -19,7 +19,7 @@ function endOf(noteId: string, notation: BarNotation, geometry: BarGeometry, hea
   const event = notation.events.find(each => each.notes.some(note => note.noteId === noteId))
   if (!head || !event) return null
   // A head that shares its number with the other voice has no mark of its own.
-  return { staffX: side === 'left' ? head.left - 1 : head.right + 1, staffY: head.y, tabX: tabX({ slice: event.slice, beside: false }, geometry), stem: head.stem }
+  return { staffX: side === 'left' ? head.left - 1 : head.right + 1, staffY: head.y, tip: head.tip, tabX: tabX({ slice: event.slice, beside: false }, geometry), stem: head.stem }
 }
 
 export const startOf = (link: Link, notation: BarNotation, geometry: BarGeometry, heads: ReadonlyMap<string, Head>): End | null =>
@@ -29,9 +29,9 @@ export const goalOf = (link: Link, notation: BarNotation, geometry: BarGeometry,
 
 const shift = (end: End, by: number): End => ({ ...end, staffX: end.staffX + by, tabX: end.tabX + by })
 
-/** A lone voice bows its links at the heads, away from the stems; with two voices a tie bows to its voice's side (Gould, "Ties"). */
+/** A lone voice bows its links at the heads, away from the stems; with two voices they bow to their voice's side (Gould, ties and slurs). */
 function sideOf(link: Link, start: End, isPolyphonic: boolean): 1 | -1 {
-  if (isPolyphonic && link.kind === 'tie' && link.voice !== 'middle') return link.voice === 'upper' ? -1 : 1
+  if (isPolyphonic && link.voice !== 'middle') return link.voice === 'upper' ? -1 : 1
   return start.stem === 1 ? 1 : -1
 }
 
@@ -42,13 +42,16 @@ export function drawLink(link: Link, start: End, goal: End, complete: boolean, i
   const isTie = link.kind === 'tie'
   // A tie runs from edge to edge of its heads, a slur from middle to middle.
   const inset = isTie ? 0 : 5
-  const staff = arc(start.staffX - inset, start.staffY + 5 * side + (isTie ? 0 : 3 * side), goal.staffX + inset, goal.staffY + 5 * side + (isTie ? 0 : 3 * side), side, look)
+  // On the side of the stems a slur stands clear of them.
+  const height = (end: End): number => (isTie ? end.staffY + 5 * side : side === end.stem ? end.staffY + 8 * side : end.tip + 4 * side)
+  const staff = arc(start.staffX - inset, height(start), goal.staffX + inset, height(goal), side, look)
   const y = (link.string - 1) * STRING_SPACE - 5
   const from = start.tabX + 3
   const to = goal.tabX - 3
   const letter = LETTER[link.kind]
+  // Above the tab, where no line runs through it.
   const tab = isTie && complete ? [] : [arc(from, y, to, y, -1, look)]
-  const label = letter ? [words(letter, (from + to) / 2, y - 7, { 'font-family': 'Alegreya Sans', 'font-size': 10, 'text-anchor': 'middle', 'class': complete ? '' : 'sheet-soft' })] : []
+  const label = letter ? [words(letter, (from + to) / 2, link.string === 1 ? y - 8 : -6.5, { 'font-family': 'Alegreya Sans', 'font-size': 10, 'text-anchor': 'middle', 'class': complete ? '' : 'sheet-soft' })] : []
   return { staff, tab: [...tab, ...label] }
 }
 

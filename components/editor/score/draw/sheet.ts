@@ -255,7 +255,7 @@ export class Sheet {
   }
 
   private addView(system: System, score: Score): SystemView {
-    const view = new SystemView(system, score, this.scale, { pen: this.pen, bars: this.bars, lanesOf: this.lanesOf })
+    const view = new SystemView(system, score, this.scale, { pen: this.pen, line: this.lineWidth, bars: this.bars, lanesOf: this.lanesOf })
     this.root.append(view.element)
     this.near.observe(view.element)
     return view

@@ -13,7 +13,14 @@ export interface Pen {
 }
 
 /** A head as ties and slurs meet it. */
-export interface Head { readonly left: number, readonly right: number, readonly y: number, readonly stem: 1 | -1 }
+export interface Head {
+  readonly left: number
+  readonly right: number
+  readonly y: number
+  readonly stem: 1 | -1
+  /** y at which the stem ends, or its beam lies. */
+  readonly tip: number
+}
 
 export interface StaffDrawing { readonly group: SVGGElement, readonly heads: ReadonlyMap<string, Head> }
 
@@ -30,6 +37,8 @@ export function createPen(vex: Vex): Pen {
   stave.setDefaultLedgerLineStyle({ strokeStyle: 'currentColor', lineWidth: 1.3 })
   return { vex, context, stave, nowhere: new vex.BoundingBox(0, 0, 0, 0) }
 }
+
+const MAX_SLOPE = 0.15
 
 const ACCIDENTAL: Readonly<Record<number, string>> = { [-2]: 'bb', [-1]: 'b', 0: 'n', 1: '#', 2: '##' }
 const REST_STEPS = ['e/4', 'f/4', 'g/4', 'a/4', 'b/4', 'c/5', 'd/5', 'e/5', 'f/5']
@@ -84,6 +93,8 @@ function draw(pen: Pen, notation: BarNotation, columns: readonly number[]): Staf
   const beams = notation.beams.map(({ eventIds, breaks }) => {
     const beam = new vex.Beam(eventIds.map(id => notes.get(id)!))
     beam.breakSecondaryAt([...breaks])
+    // Slants stay within a space or so (Gould, Behind Bars, beam slants).
+    Object.assign(beam.renderOptions, { maxSlope: MAX_SLOPE, minSlope: -MAX_SLOPE })
     return beam
   })
   const group = svg('g', { 'fill': 'currentColor', 'stroke': 'currentColor', 'stroke-width': 1, 'font-family': 'Bravura' })
@@ -110,7 +121,10 @@ function letRingMarks(events: readonly StaffEvent[], notes: ReadonlyMap<string, 
 
 function headsOf(events: readonly StaffEvent[], notes: ReadonlyMap<string, StaveNote>): ReadonlyMap<string, Head> {
   return new Map(events.flatMap((event) => {
-    const left = notes.get(event.eventId)!.getNoteHeadBeginX()
-    return event.notes.map((note): [string, Head] => [note.noteId, { left, right: left + HEAD_WIDTH, y: yOfPosition(note.position), stem: event.stem }])
+    if (!event.notes.length) return []
+    const drawn = notes.get(event.eventId)!
+    const left = drawn.getNoteHeadBeginX()
+    const tip = event.base === 1 ? yOfPosition(event.notes[0]!.position) : drawn.getStemExtents().topY
+    return event.notes.map((note): [string, Head] => [note.noteId, { left, right: left + HEAD_WIDTH, y: yOfPosition(note.position), stem: event.stem, tip }])
   }))
 }

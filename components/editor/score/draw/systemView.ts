@@ -9,6 +9,8 @@ import { at, svg } from './svg'
 
 export interface Surface {
   readonly pen: Pen
+  /** Points of a full line: on paper each system takes its part of the page's width. */
+  readonly line: number
   /** Nodes of bars by id: a bar that moves to another system keeps them. */
   readonly bars: Map<string, DrawnBar>
   readonly lanesOf: ((score: Score, index: number) => readonly LaneLine[]) | null
@@ -67,6 +69,7 @@ export class SystemView {
     this.drawing.setAttribute('width', `${at(w * this.scale)}`)
     this.drawing.setAttribute('height', `${at(h * this.scale)}`)
     this.element.style.height = `${at(h * this.scale)}px`
+    this.drawing.style.setProperty('--share', `${at(100 * w / (this.surface.line + LEFT + 1))}%`)
   }
 
   /** From the window's points to the system's. */
