@@ -17,13 +17,13 @@ export const lengthLabel = ({ base, dots }: Pick<Length, 'base' | 'dots'>): stri
 
 const article = (words: string): string => (/^[aeiou]/.test(words) ? `an ${words}` : `a ${words}`)
 
-/** A span in words: "an eighth", "a dotted quarter", "3 eighths", and where no note says it, "5/12 of a whole note". */
+/** A span in words: "an eighth", "a half note", "3 eighths", and where no note says it, "5/12 of a whole note". */
 export function spanLabel(span: Fraction): string {
   const plain = BASES.flatMap(base => [0, 1].map(dots => ({ base, dots }) as const))
     .find(length => equals(plainLength(length), span))
-  if (plain) return article(lengthLabel(plain))
+  if (plain) return article(lengthLabel(plain)) + (plain.base < 4 ? ' note' : '')
   const at = BASES.findIndex(base => base === span.d)
-  return at < 0 ? `${span.n}/${span.d} of a whole note` : `${span.n} ${LENGTH_NAMES[at]}${LENGTH_NAMES[at] === 'half' ? ' notes' : 's'}`
+  return at < 0 ? `${span.n}/${span.d} of a whole note` : `${span.n} ${LENGTH_NAMES[at]}${span.d < 4 ? ' note' : ''}s`
 }
 
 /** How a voice fills its bar: "This bar is an eighth short"; null when it fits or nothing is in it. */
