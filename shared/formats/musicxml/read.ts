@@ -1,6 +1,6 @@
 import { XmlElement } from '@rgrove/parse-xml'
 import { DEFAULT_KEY, DEFAULT_METER } from '../../score/context'
-import { ZERO, equals, toNumber } from '../../score/fraction'
+import { ZERO, equals, fraction, isLess, toNumber, type Fraction } from '../../score/fraction'
 import { capoOffset } from '../../score/sounding'
 import { meterLength } from '../../score/time'
 import { VOICE_NAMES, type Bar, type Head, type Key, type Meter, type RingRule, type Score, type Voices, type VoiceName } from '../../score/types'
@@ -136,7 +136,7 @@ function readBars(context: BarsContext): Bar[] {
       if (voice) voices[name] = voice
     }
     const isFirst = index === 0
-    const bar = barOf(measure, voices, { meter, newId })
+    const bar = barOf(measure, voices, meter, context)
     return {
       ...bar,
       ...(measure.meter && !(isFirst && unstated.includes('meter')) && { meter: measure.meter }),
@@ -173,10 +173,21 @@ function besideOf({ music, notation }: Sources, index: number): (note: RawNote) 
 
 const ringOf = (text: string | undefined): RingRule | undefined => (text === 'let-ring' || text === 'written' ? text : undefined)
 
-function barOf(measure: RawMeasure, voices: Voices, { meter, newId }: { meter: Meter, newId: () => string }): Bar {
+/** A bar may be meant to hold eight whole notes; what is longer, as a cadenza, reads as an overfull bar. */
+const LONGEST_BAR = fraction(8)
+
+/** The bar's own length where it is not the meter's. */
+function lengthOfBar(measure: RawMeasure, meter: Meter, remarks: Remarks): Fraction | undefined {
   const stated = measure.features[FEATURE.length]
-  const isMeter = equals(measure.length, meterLength(meter)) || equals(measure.length, ZERO)
-  const length = stated === undefined ? (isMeter ? undefined : measure.length) : fractionOfText(stated) ?? undefined
+  if (stated !== undefined) return fractionOfText(stated) ?? undefined
+  if (equals(measure.length, ZERO) || equals(measure.length, meterLength(meter))) return undefined
+  if (!isLess(LONGEST_BAR, measure.length)) return measure.length
+  remarks.count('Longer than eight whole notes, and so more than its meter holds: {bars}.', measure.number)
+  return undefined
+}
+
+function barOf(measure: RawMeasure, voices: Voices, meter: Meter, { newId, remarks }: BarsContext): Bar {
+  const length = lengthOfBar(measure, meter, remarks)
   const ring = ringOf(measure.features[FEATURE.ring])
   return {
     id: newId(), voices,

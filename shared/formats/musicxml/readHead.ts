@@ -115,7 +115,7 @@ export function pitchRule(head: Head, measures: readonly RawMeasure[], staff: nu
       else odd.push(measure.number)
     }
   }
-  for (const bar of odd) remarks.count('{n} notes had a pitch that does not fit their string and fret: string and fret were kept ({bars}).', bar)
+  for (const bar of odd) remarks.count('{n} notes had a pitch that does not fit string and fret, which were kept ({bars}).', bar)
   if (withCapo + without === 0) return 'unclear'
   const rule = withCapo >= without ? 'sounding' : 'without-capo'
   if (capo) {

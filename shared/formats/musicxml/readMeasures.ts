@@ -109,7 +109,7 @@ function remarkDirection(direction: XmlElement, bar: string, remarks: Remarks): 
 
 const ringWords: readonly string[] = [...Object.values(RING_WORDS), `${RING_WORDS['let-ring']} throughout`]
 /** Words that say what the score holds elsewhere are not missed. */
-const isKnownWords = (words: string): boolean => ringWords.includes(words) || /^(?:Standard tuning|Tuning) [A-G]/.test(words)
+const isKnownWords = (words: string): boolean => ringWords.includes(words) || /^(?:Standard tuning|Tuning) [A-G][♯♭]*\d/.test(words)
 
 const SILENT = new Set(['print', 'listening', 'bookmark', 'link'])
 

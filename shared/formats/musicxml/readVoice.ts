@@ -40,7 +40,7 @@ function groupsOf(notes: readonly RawNote[], { remarks, bar }: VoiceContext): Gr
       continue
     }
     if (isLess(note.start, end)) {
-      remarks.count('{n} notes overlapped others of their voice and were left out ({bars}).', bar)
+      remarks.count('Left out, as other notes of the voice overlap: {n} notes ({bars}).', bar)
       continue
     }
     groups.push({ start: note.start, notes: [note] })
@@ -87,7 +87,7 @@ function writtenLengths(note: RawNote, tuplets: ReturnType<typeof createTupletRe
   const { type, ratio, duration } = note
   if (type && type.dots <= 3 && isWrittenAs(type, ratio, duration)) return [within(type, tuplets.enter(note, type.base, type.dots), tuplets.declared(), duration)]
   const spelled = spelledLength(duration)
-  if (!spelled) remarks.count('{n} notes had lengths that can’t be written and were shortened ({bars}).', bar)
+  if (!spelled) remarks.count('Shortened to a length that can be written: {n} notes ({bars}).', bar)
   const { pieces, ratio: own } = spelled ?? spelledLength(nearestWritable(duration))!
   const ids = own ? tuplets.own(own, pieces[0]!.base) : []
   return pieces.map(piece => withIds(piece, ids))
@@ -116,7 +116,7 @@ function siteNotes(notes: readonly RawNote[], { head, rule, bar, remarks }: Voic
   for (const raw of notes) {
     const midi = statedMidi(raw)
     if (raw.string !== undefined && raw.fret !== undefined && raw.string >= 1 && raw.string <= head.strings.length) {
-      if (taken.has(raw.string)) remarks.count('{n} notes stood on a string that already sounds in their chord and were left out ({bars}).', bar)
+      if (taken.has(raw.string)) remarks.count('Left out, as the string sounds already in the chord: {n} notes ({bars}).', bar)
       else sites.set(raw, { raw, string: raw.string, fret: raw.fret })
       taken.add(raw.string)
     }
@@ -126,7 +126,7 @@ function siteNotes(notes: readonly RawNote[], { head, rule, bar, remarks }: Voic
   placeChord(head, open.map(each => each.midi), taken).forEach((place, index) => {
     const raw = open[index]?.raw
     if (!raw) return
-    if (!place) return remarks.count('{n} notes can’t be played on this tuning beside the others and were left out ({bars}).', bar)
+    if (!place) return remarks.count('Left out, as no string of this tuning is left to play it on: {n} notes ({bars}).', bar)
     remarks.count('{n} notes had no string and fret: placed at the lowest possible fret ({bars}). Check their fingering.', bar)
     sites.set(raw, { raw, ...place })
   })
@@ -137,7 +137,7 @@ function partialOf(sited: Sited, { head, bar, remarks }: VoiceContext): number |
   const { raw, string, fret } = sited
   if (raw.harmonic === 'none') return undefined
   if (raw.harmonic === 'artificial') {
-    remarks.count('{n} artificial harmonics were read as plain notes ({bars}).', bar)
+    remarks.count('Read as plain notes, being artificial: {n} harmonics ({bars}).', bar)
     return undefined
   }
   const midi = statedMidi(raw)
@@ -145,7 +145,7 @@ function partialOf(sited: Sited, { head, bar, remarks }: VoiceContext): number |
   const isSound = raw.harmonic === 'sounding' && bySound >= 2 && bySound <= 12
   const partial = isSound ? bySound : PARTIAL_AT_FRET[fret]
   if (partial === undefined || fret <= 0) {
-    remarks.count('{n} harmonics did not say where the string is touched and were read as plain notes ({bars}).', bar)
+    remarks.count('Read as plain notes, as the place to touch is not given: {n} harmonics ({bars}).', bar)
     return undefined
   }
   return partial

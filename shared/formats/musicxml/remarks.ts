@@ -2,7 +2,7 @@
 export interface Remarks {
   /** A kind of thing that is left out, in the bar of this number. */
   readonly leaveOut: (what: string, bar: string) => void
-  /** Something told of bars, such as "{notes} had no string and fret": `{bars}` in the sentence becomes their numbers, `{n}` how often. */
+  /** Something told of bars: in the sentence `{bars}` becomes their numbers and `{n} notes` how often, "1 note" or "3 notes". */
   readonly count: (sentence: string, bar: string) => void
   readonly say: (sentence: string) => void
   readonly list: () => string[]
@@ -22,6 +22,9 @@ export function barWords(bars: readonly string[]): string {
   return `${unique(bars).length === 1 ? 'bar' : 'bars'} ${words}`
 }
 
+const told = (sentence: string, bars: readonly string[]): string =>
+  sentence.replace(/\{n\} (\w+)s\b/, (_, thing: string) => `${bars.length} ${thing}${bars.length === 1 ? '' : 's'}`).replace('{bars}', barWords(bars))
+
 export function createRemarks(): Remarks {
   const left = new Map<string, string[]>()
   const counted = new Map<string, string[]>()
@@ -37,7 +40,7 @@ export function createRemarks(): Remarks {
     say: sentence => void said.add(sentence),
     list: () => [
       ...said,
-      ...[...counted].map(([sentence, bars]) => sentence.replace('{n}', String(bars.length)).replace('{bars}', barWords(bars))),
+      ...[...counted].map(([sentence, bars]) => told(sentence, bars)),
       ...[...left].map(([what, bars]) => `Left out: ${what} (${barWords(bars)}).`),
     ],
   }

@@ -111,11 +111,14 @@ function tuningXml(name: string, attribute: string, number: number, { step, alte
 
 const letterOf = (key: Key): number => STEPS.findIndex(step => Math.abs(fifthsOf({ step, alter: 0 }) - key.fifths) % 7 === 0)
 
+/** The tab staff is at sounding pitch; said outright, since some readers give a transposition to the whole part (Verovio 6). */
+const TAB_TRANSPOSE = '<transpose number="2"><diatonic>0</diatonic><chromatic>0</chromatic></transpose>'
+
 /** Written to sounding: the capo up, an octave down. Letters by the names of the two keys. */
 function transposeXml(head: Head, key: Key): string {
   const capo = capoOffset(head)
   const diatonic = (letterOf(raisedKey(key, capo)) - letterOf(key) + 7) % 7
-  return `<transpose number="1"><diatonic>${diatonic}</diatonic><chromatic>${capo % 12}</chromatic><octave-change>${Math.floor(capo / 12) - 1}</octave-change></transpose>`
+  return `${TAB_TRANSPOSE}<transpose number="1"><diatonic>${diatonic}</diatonic><chromatic>${capo % 12}</chromatic><octave-change>${Math.floor(capo / 12) - 1}</octave-change></transpose>`
 }
 
 function openingXml(score: Score): string {
