@@ -23,19 +23,21 @@ for (const [device, viewport] of [['desk', { width: 1440, height: 900 }], ['phon
     test.describe(`${device}, ${colorScheme}`, () => {
       test.use({ viewport, colorScheme, contextOptions: { reducedMotion: 'reduce' } })
 
-      test('open pages', async ({ page }) => {
-        for (const path of open) {
+      for (const path of open) {
+        test(`${path} for anyone`, async ({ page }) => {
           await visit(page, path)
           await check(page, path)
-        }
-      })
-
-      test('pages for people who are signed in', async ({ page }) => {
+        })
+      }
+      for (const path of closed) {
+        test(`${path} for people who are signed in`, async ({ page }) => {
+          await signInDemo(page)
+          await visit(page, path)
+          await check(page, path)
+        })
+      }
+      test('menus and dialogs', async ({ page }) => {
         await signInDemo(page)
-        for (const path of closed) {
-          await visit(page, path)
-          await check(page, path)
-        }
         await visit(page, '/folio')
         await page.getByRole('button', { name: /^Actions for/ }).first().click()
         await check(page, 'the menu of a row')

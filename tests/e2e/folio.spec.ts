@@ -45,6 +45,7 @@ test('rename, duplicate, mark, filter, sort and search', async ({ page }) => {
   const first = own('Ebb')
   const renamed = own('Slack Tide')
   await keep(page, first, 'D2 A2 D3 F#3 A3 C#4')
+  await keep(page, `${renamed} in standard`, 'E2 A2 D3 G3 B3 E4')
   await visit(page, '/folio')
   await act(page, first, 'Rename…')
   await expect(page.getByRole('dialog').getByLabel('Title')).toHaveValue(first)
@@ -54,9 +55,11 @@ test('rename, duplicate, mark, filter, sort and search', async ({ page }) => {
   await act(page, renamed, 'Mark as ready')
   await expect(row(page, renamed)).toContainText('Ready')
   await act(page, renamed, 'Duplicate')
-  await expect(page.getByRole('link', { name: renamed })).toHaveCount(2)
+  await expect(page.getByRole('link', { name: renamed, exact: true })).toHaveCount(2)
 
   await visit(page, '/folio')
+  await page.getByLabel('Search').fill(renamed.toUpperCase())
+  await expect(page.getByRole('rowheader')).toHaveCount(3)
   await page.getByLabel('Tuning', { exact: true }).selectOption('D A D F♯ A C♯')
   await expect(page.getByRole('rowheader')).toHaveCount(2)
   await page.getByLabel('State').selectOption('Ready')
@@ -66,7 +69,7 @@ test('rename, duplicate, mark, filter, sort and search', async ({ page }) => {
   await expect(page.getByRole('columnheader', { name: 'Title' })).toHaveAttribute('aria-sort', 'ascending')
   await page.getByLabel('Search').fill('no such tune')
   await page.getByRole('button', { name: /^Show all/ }).click()
-  await expect(page.getByRole('link', { name: renamed })).toHaveCount(2)
+  await expect(page.getByRole('link', { name: renamed, exact: true })).toHaveCount(2)
 })
 
 test('what was deleted comes back by one key', async ({ page }) => {
