@@ -151,8 +151,8 @@ describe('requests from elsewhere', () => {
   const create = (headers: Record<string, string>) => maren.send('POST', '/api/arrangements', { title: 'From elsewhere' }, headers)
 
   it('are refused when they would change something', async () => {
-    const foreign = [{ origin: 'https://elsewhere.example' }, { origin: 'null' }, { 'sec-fetch-site': 'cross-site' }, { 'sec-fetch-site': 'same-site' }, { origin: 'not an origin' }]
-    for (const headers of foreign) expect(await create(headers as Record<string, string>), JSON.stringify(headers)).toMatchObject({ status: 403, body: { data: { code: 'foreign-origin' } } })
+    const foreign: Record<string, string>[] = [{ origin: 'https://elsewhere.example' }, { origin: 'null' }, { 'sec-fetch-site': 'cross-site' }, { 'sec-fetch-site': 'same-site' }, { origin: 'not an origin' }]
+    for (const headers of foreign) expect(await create(headers), JSON.stringify(headers)).toMatchObject({ status: 403, body: { data: { code: 'foreign-origin' } } })
     expect((await create({ 'origin': server.url, 'sec-fetch-site': 'same-origin' })).status).toBe(201)
   })
 
