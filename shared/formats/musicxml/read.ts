@@ -7,11 +7,12 @@ import { VOICE_NAMES, type Bar, type Head, type Key, type Meter, type RingRule, 
 import { validateScore } from '../../score/validate'
 import { raisedKey } from '../statement'
 import { isOwn, pitchRule, readHead, unstatedOf, type PitchRule } from './readHead'
-import { fractionOfText, readMeasures, statedMidi, transposeOf, type RawMeasure } from './readMeasures'
+import { transposeOf } from './attributes'
+import { fractionOfText, readMeasures, statedMidi, type RawMeasure } from './readMeasures'
 import type { RawNote } from './readNote'
 import { readVoice } from './readVoice'
 import { createRemarks, type Remarks } from './remarks'
-import { chooseSources, notesOf, type RawPart, type Sources } from './source'
+import { chooseSources, notesOf, remarkRetuning, type RawPart, type Sources } from './source'
 import { FEATURE, TAB_VOICE_OFFSET, VOICE_NUMBERS } from './terms'
 import { all, one, parseTree, textAt } from './tree'
 
@@ -55,6 +56,7 @@ function readScore(root: XmlElement, newId: () => string): ReadMusicXml | { read
   const highest = Math.max(0, ...measures.flatMap(measure => notesOf(sources.music, measure)).map(note => note.fret ?? 0))
   const head = readHead(root, sources.tab, highest, remarks)
   if ('problem' in head) return head
+  remarkRetuning(sources, remarks)
   const ownFile = isOwn(root)
   const rule = pitchRule(head, measures, sources.music.staff, ownFile ? createRemarks() : remarks)
   const score = { head, bars: readBars({ sources, head, rule, ownFile, unstated: unstatedOf(root), newId, remarks }) }

@@ -1,7 +1,8 @@
 import type { XmlElement } from '@rgrove/parse-xml'
 import { ZERO, add, fraction, isLess, max, subtract, type Fraction } from '../../score/fraction'
-import { midiOf, type Spelling, type Step } from '../../score/pitch'
-import { BASES, type Base, type Key, type Meter, type Tempo } from '../../score/types'
+import { midiOf } from '../../score/pitch'
+import type { Key, Meter, Tempo } from '../../score/types'
+import { readKey, readMeter, readStaves, readTransposes, transposeOf, type RawStaff, type Transposes } from './attributes'
 import { durationAt, readNote, type RawNote } from './readNote'
 import { PLAIN_WORDS, type Remarks } from './remarks'
 import { BASE_OF_TYPE, RING_WORDS } from './terms'
@@ -23,69 +24,7 @@ export interface RawMeasure {
   readonly transposes: Transposes
 }
 
-/** Half steps from written to sounding pitch by staff; 'all' where the file names none. */
-export type Transposes = ReadonlyMap<number | 'all', number>
-export const transposeOf = (transposes: Transposes, staff: number): number => transposes.get(staff) ?? transposes.get('all') ?? 0
-
-/** What `clef` and `staff-details` say of a staff. Tunings by line, 1 the lowest. */
-export interface RawStaff {
-  readonly staff: number
-  readonly isTab: boolean
-  readonly lines: number | undefined
-  readonly tunings: ReadonlyMap<number, Spelling>
-  readonly capo: number | undefined
-}
-
 interface PartState { divisions: number, transposes: Transposes }
-
-const isBase = (value: number): value is Base => (BASES as readonly number[]).includes(value)
-
-function readKey(element: XmlElement): Key | null {
-  const fifths = numberAt(element, 'fifths')
-  if (fifths === undefined || !Number.isInteger(fifths) || Math.abs(fifths) > 7) return null
-  return { fifths, mode: textAt(element, 'mode')?.trim() === 'minor' ? 'minor' : 'major' }
-}
-
-/** "3+2" eighths are five; 3/8 + 2/4 are seven eighths. */
-function readMeter(element: XmlElement): Meter | null {
-  const counts = all(element, 'beats').map(each => each.text.split('+').reduce((sum, part) => sum + Number(part), 0))
-  const units = all(element, 'beat-type').map(each => Number(each.text))
-  const unit = Math.max(...units)
-  const beats = counts.reduce((sum, count, index) => sum + count * unit / (units[index] ?? unit), 0)
-  return isBase(unit) && Number.isInteger(beats) && beats >= 1 && beats <= 32 ? { beats, unit } : null
-}
-
-export function readTuning(element: XmlElement): Spelling | null {
-  const step = textAt(element, 'tuning-step')?.trim() ?? ''
-  const octave = numberAt(element, 'tuning-octave')
-  return /^[A-G]$/.test(step) && octave !== undefined ? { step: step as Step, alter: numberAt(element, 'tuning-alter') ?? 0, octave } : null
-}
-
-function readStaves(attributes: XmlElement): RawStaff[] {
-  const clefs = all(attributes, 'clef')
-  const details = all(attributes, 'staff-details')
-  const numbers = new Set([...clefs, ...details].map(each => numberOf(each, 'number') ?? 1))
-  return [...numbers].map((staff) => {
-    const mine = (each: XmlElement) => (numberOf(each, 'number') ?? 1) === staff
-    const detail = details.find(mine)
-    const tunings = all(detail, 'staff-tuning').flatMap((each) => {
-      const tuning = readTuning(each)
-      return tuning ? [[numberOf(each, 'line') ?? 1, tuning] as const] : []
-    })
-    return {
-      staff, isTab: clefs.some(each => mine(each) && textAt(each, 'sign')?.trim() === 'TAB') || tunings.length > 0,
-      lines: numberAt(detail, 'staff-lines'), tunings: new Map(tunings), capo: numberAt(detail, 'capo'),
-    }
-  })
-}
-
-function readTransposes(attributes: XmlElement, state: PartState): void {
-  for (const each of all(attributes, 'transpose')) {
-    const octaves = numberAt(each, 'octave-change') ?? 0
-    const halfSteps = (numberAt(each, 'chromatic') ?? 0) + 12 * octaves
-    state.transposes = new Map([...state.transposes, [numberOf(each, 'number') ?? 'all', halfSteps]])
-  }
-}
 
 /** A metronome mark of a note and a number; else the bare tempo for players, in quarters. */
 function readTempo(element: XmlElement): Tempo | null {
@@ -184,7 +123,7 @@ function readOther(element: XmlElement, at: Fraction, bar: Draft, state: PartSta
 
 function readAttributes(attributes: XmlElement, bar: Draft, state: PartState, remarks: Remarks): void {
   state.divisions = numberAt(attributes, 'divisions') || state.divisions
-  readTransposes(attributes, state)
+  state.transposes = readTransposes(attributes, state.transposes)
   for (const each of all(attributes, 'key')) {
     const key = readKey(each)
     if (key) bar.keys.push({ staff: numberOf(each, 'number'), key })

@@ -1,7 +1,8 @@
 import { toNumber } from '../../score/fraction'
-import type { RawMeasure, RawStaff } from './readMeasures'
-import { statedMidi } from './readMeasures'
+import type { RawStaff } from './attributes'
+import { statedMidi, type RawMeasure } from './readMeasures'
 import type { RawNote } from './readNote'
+import type { Remarks } from './remarks'
 
 export interface RawPart { readonly name: string, readonly measures: readonly RawMeasure[] }
 
@@ -58,4 +59,12 @@ export function chooseSources(parts: readonly RawPart[]): Sources | null {
 function detailsOf(source: StaffSource): RawStaff | null {
   const stated = source.part.measures.flatMap(measure => measure.staves).filter(staff => staff.staff === source.staff)
   return stated.find(staff => staff.tunings.size > 0) ?? stated.find(staff => staff.isTab) ?? stated[0] ?? null
+}
+
+/** Tuning and capo are those of the first bar that states them. */
+export function remarkRetuning({ music, tab }: Sources, remarks: Remarks): void {
+  for (const measure of music.part.measures) {
+    const changes = measure.staves.some(staff => staff.staff === tab?.staff && staff !== tab && (staff.tunings.size > 0 || staff.capo !== undefined))
+    if (changes) remarks.leaveOut('a change of tuning or capo', measure.number)
+  }
 }

@@ -1,13 +1,13 @@
 /** Writing XML 1.0: the little that a MusicXML file needs, as plain text for speed. */
 
-const ESCAPES: Readonly<Record<string, string>> = { '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;', '\r': '&#13;', '\n': '&#10;', '\t': '&#9;' }
+const ESCAPES: Readonly<Record<string, string>> = { '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;', '\n': '&#10;', '\t': '&#9;' }
 /** Not allowed in XML 1.0 at all (its production 2, Char); a lone surrogate is no character. */
 // eslint-disable-next-line no-control-regex
 const IMPOSSIBLE = /[\u0000-\u0008\u000B\u000C\u000E-\u001F\uFFFE\uFFFF]|[\uD800-\uDBFF](?![\uDC00-\uDFFF])|(?<![\uD800-\uDBFF])[\uDC00-\uDFFF]/g
-const SPECIAL = /[&<>"\r\n\t]/g
+const SPECIAL = /[&<>"\n\t]/g
 
-/** Text for content or an attribute. Characters that XML can't hold are left out. */
-export const escaped = (text: string): string => text.replace(IMPOSSIBLE, '').replace(SPECIAL, sign => ESCAPES[sign] ?? sign)
+/** Text for content or an attribute. Characters that XML can't hold are left out, and every line end is a line feed as in XML (2.11). */
+export const escaped = (text: string): string => text.replace(/\r\n?/g, '\n').replace(IMPOSSIBLE, '').replace(SPECIAL, sign => ESCAPES[sign] ?? sign)
 
 export type Attributes = Readonly<Record<string, string | number | undefined>>
 

@@ -131,6 +131,11 @@ describe('notes', () => {
     expect(score.head.strings.map(open => open.pitch)).toEqual(['E4', 'B3', 'G3', 'D3', 'A2', 'E2'])
     expect(remarks).toEqual(['The file states no tuning: standard tuning was taken.'])
   })
+  it('says where tuning or capo change, and keeps the first', () => {
+    const { score, remarks } = read(tab(note(16), 4, `<measure number="2"><attributes><staff-details><capo>3</capo></staff-details></attributes>${note(16)}</measure>`))
+    expect(score.head.capos).toEqual([])
+    expect(remarks).toEqual(['Left out: a change of tuning or capo (bar 2).'])
+  })
   it('turns a score of measures of parts round', () => {
     const partwise = tab(note(16))
     const timewise = partwise.replaceAll('score-partwise', 'score-timewise').replace('<part id="P1"><measure number="1">', '<measure number="1"><part id="P1">').replace('</measure></part>', '</part></measure>')
