@@ -55,20 +55,28 @@ function longestRing(head: Head): number {
   return seconds
 }
 
+const knownSeconds = new WeakMap<Bar, { context: Context, seconds: number }>()
+
+function secondsOfBar(bar: Bar, context: Context): number {
+  const known = knownSeconds.get(bar)
+  if (known?.context === context) return known.seconds
+  const seconds = secondsOf(playedLength(bar, context.meter), context.tempo)
+  knownSeconds.set(bar, { context, seconds })
+  return seconds
+}
+
 interface Incoming { readonly rings: readonly Ring[], /** From the bar line of those rings to this bar's. */ readonly before: Fraction }
 
-/** The bar's own rings and those of the bars before which may still sound in it, oldest first. */
-function incoming({ bars, contexts }: Sequence, index: number): Incoming[] {
-  const found: Incoming[] = []
+/** The bar's own rings and those of the bars before which may still sound in it, the latest first. */
+function incoming(sequence: Sequence, index: number): Incoming[] {
+  const { bars, contexts } = sequence
+  const found: Incoming[] = [{ rings: ringsIn(sequence, index), before: ZERO }]
   let before = ZERO
   let seconds = longestRing(contexts[index]!.head)
-  for (let at = index; at >= 0 && seconds > 0; at--) {
-    if (at < index) {
-      const length = playedLength(bars[at]!, contexts[at]!.meter)
-      before = add(before, length)
-      seconds -= secondsOf(length, contexts[at]!.tempo)
-    }
-    found.unshift({ rings: ringsIn({ bars, contexts }, at), before })
+  for (let at = index - 1; at >= 0 && seconds > 0; at--) {
+    before = add(before, playedLength(bars[at]!, contexts[at]!.meter))
+    seconds -= secondsOfBar(bars[at]!, contexts[at]!)
+    found.push({ rings: ringsIn(sequence, at), before })
   }
   return found
 }

@@ -1,9 +1,9 @@
 import type { Context } from '../score/context'
-import { ZERO, add, compare, equals, fraction, isLess, max, subtract, type Fraction } from '../score/fraction'
+import { ONE, ZERO, add, equals, fraction, isLess, max, subtract, type Fraction } from '../score/fraction'
 import { playedLength, secondsOf } from '../score/time'
 import type { Bar, RingRule } from '../score/types'
 import { isOpen, secondsToDieOf } from './dying'
-import { placedNotes, strokesAt, tiedNote, type Placed, type Stroke } from './strokes'
+import { placedNotes, strokesAt, strokesOn, tiedNote, type Placed, type Stroke } from './strokes'
 import type { Ring, RingEnd } from './types'
 
 /** Bars in the order in which they are written, or played, each with what holds in it. */
@@ -47,41 +47,43 @@ function later(a: Intention, b: Intention): Intention {
 
 /** When the string is touched next in a bar, counted from its bar line; only after `from` where that is given. */
 function nextTouch(sequence: Sequence, bar: number, string: number, from: Fraction | null): Fraction | null {
-  const touch = strokesAt(sequence.bars, bar).find(({ heard }) => heard.note.string === string && (!from || isLess(from, heard.start)))
+  const touch = strokesOn(sequence.bars, bar, string).find(({ heard }) => !from || isLess(from, heard.start))
   return touch?.heard.start ?? null
 }
 
 const onGrid = (wholes: number): Fraction => fraction(Math.max(1, Math.floor(wholes * GRID)), GRID)
 
-interface End { readonly at: Fraction, readonly ends: RingEnd, readonly reach: number }
+interface End { readonly at: Fraction, readonly ends: RingEnd }
+
+/** The earliest; of equals the first. */
+const earliest = (ends: readonly End[]): End => ends.reduce((best, each) => (isLess(each.at, best.at) ? each : best))
 
 /** The first of intended, forced and free, looked for bar by bar. Times count from the bar line of the bar where the note is struck. */
-function endOf(sequence: Sequence, { heard, members }: Stroke, bar: number): End {
+function endOf(sequence: Sequence, { heard, members }: Stroke, bar: number): Reach<End> {
   const intended = members.map(item => intention(sequence, item, bar)).reduce(later)
-  const candidate = (at: Fraction | null, ends: RingEnd) => (at ? [{ at, ends }] : [])
   let seconds = secondsToDieOf(sequence.contexts[bar]!.head, heard.note)
   let offset = ZERO
   for (let index = bar; index < sequence.bars.length; index++) {
+    const { tempo } = sequence.contexts[index]!
     const end = add(offset, lengthAt(sequence, index))
     const from = max(offset, heard.start)
-    const whole = secondsOf({ n: 1, d: 1 }, sequence.contexts[index]!.tempo)
+    const left = secondsOf(subtract(end, from), tempo)
     const touch = nextTouch(sequence, index, heard.note.string, index === bar ? heard.start : null)
     // In order of precedence where two fall together.
-    const [found] = [
-      ...candidate(intended.at, intended.ends),
-      ...candidate(touch && add(offset, touch), 'string'),
-      ...candidate(add(from, onGrid(seconds / whole)), 'dies'),
-    ].sort((a, b) => compare(a.at, b.at))
-    if (found && compare(found.at, end) <= 0) return { ...found, reach: Math.max(index, intended.reach) }
-    seconds -= secondsOf(subtract(end, from), sequence.contexts[index]!.tempo)
+    const ends: End[] = []
+    if (intended.at && !isLess(end, intended.at)) ends.push({ at: intended.at, ends: intended.ends })
+    if (touch) ends.push({ at: add(offset, touch), ends: 'string' })
+    if (seconds <= left) ends.push({ at: add(from, onGrid(seconds / secondsOf(ONE, tempo))), ends: 'dies' })
+    if (ends.length) return { value: earliest(ends), reach: Math.max(index, intended.reach) }
+    seconds -= left
     offset = end
   }
-  return { at: offset, ends: 'end', reach: sequence.bars.length }
+  return { value: { at: offset, ends: 'end' }, reach: sequence.bars.length }
 }
 
 function ringOf(sequence: Sequence, stroke: Stroke, bar: number): Reach<Ring> {
   const { note, event, voice, start } = stroke.heard
-  const { at, ends, reach } = endOf(sequence, stroke, bar)
+  const { value: { at, ends }, reach } = endOf(sequence, stroke, bar)
   return {
     value: { noteId: note.id, eventId: event.id, string: note.string, voice, start, sounds: subtract(at, start), ends, open: isOpen(note) },
     reach,

@@ -76,17 +76,30 @@ const louder = (a: Placed, b: Placed): Placed => {
   return b.note.fret > a.note.fret ? b : a
 }
 
-const known = new WeakMap<Bar, { before: Bar | undefined, strokes: readonly Stroke[] }>()
+interface Touches { readonly before: Bar | undefined, readonly strokes: readonly Stroke[], readonly byString: ReadonlyMap<number, readonly Stroke[]> }
 
-/** The touches of strings in a bar, in order of time and string; two voices on one string at one moment are one touch. */
-export function strokesAt(bars: readonly Bar[], bar: number): readonly Stroke[] {
+const known = new WeakMap<Bar, Touches>()
+
+function touches(bars: readonly Bar[], bar: number): Touches {
   const before = bars[bar - 1]
   const found = known.get(bars[bar]!)
-  if (found && found.before === before) return found.strokes
+  if (found && found.before === before) return found
   const strokes = gather(placedNotes(bars[bar]!).filter(item => !isHeldOver(item, bars, bar)))
-  known.set(bars[bar]!, { before, strokes })
-  return strokes
+  const byString = new Map<number, Stroke[]>()
+  for (const stroke of strokes) {
+    const { string } = stroke.heard.note
+    byString.set(string, [...byString.get(string) ?? [], stroke])
+  }
+  const all = { before, strokes, byString }
+  known.set(bars[bar]!, all)
+  return all
 }
+
+/** The touches of strings in a bar, in order of time and string; two voices on one string at one moment are one touch. */
+export const strokesAt = (bars: readonly Bar[], bar: number): readonly Stroke[] => touches(bars, bar).strokes
+
+/** The touches of one string in a bar, in order of time. */
+export const strokesOn = (bars: readonly Bar[], bar: number, string: number): readonly Stroke[] => touches(bars, bar).byString.get(string) ?? []
 
 function gather(notes: readonly Placed[]): Stroke[] {
   const strokes: Stroke[] = []

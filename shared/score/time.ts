@@ -31,10 +31,17 @@ export const meterLength = (meter: Meter): Fraction => fraction(meter.beats, met
 /** What a bar is meant to hold: its own length (a pickup, a short closing bar), else the meter's. */
 export const barLength = (bar: Bar, meter: Meter): Fraction => bar.length ?? meterLength(meter)
 
-/** Time a bar takes when played: what it is meant to hold, or its longest voice where that is overfull. */
-export const playedLength = (bar: Bar, meter: Meter): Fraction =>
-  [bar.voices.upper, bar.voices.lower, bar.voices.middle].map(voiceTotal)
+const played = new WeakMap<Bar, { readonly meter: Meter, readonly length: Fraction }>()
+
+/** Time a bar takes when played: what it is meant to hold, or its longest voice where that is overfull. Remembered, as it is asked for often. */
+export function playedLength(bar: Bar, meter: Meter): Fraction {
+  const known = played.get(bar)
+  if (known?.meter === meter) return known.length
+  const length = [bar.voices.upper, bar.voices.lower, bar.voices.middle].map(voiceTotal)
     .reduce((longest, each) => (compare(each, longest) > 0 ? each : longest), barLength(bar, meter))
+  played.set(bar, { meter, length })
+  return length
+}
 
 /** Over (positive) or under (negative) what the bar is meant to hold; zero when it fits. */
 export const surplus = (voice: Voice | undefined, bar: Bar, meter: Meter): Fraction =>
