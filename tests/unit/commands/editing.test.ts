@@ -90,6 +90,23 @@ describe('moving', () => {
   })
 })
 
+describe('selecting whole bars', () => {
+  it.each([
+    ['3/0w | 3/1h ^3/2h | 3/4w', 'selection.nextBar', '3/0w | @3/1h 3/2h ^3: | 3/4w'],
+    ['3/0w | 3/1h ^3/2h | 3/4w', 'selection.nextBar selection.nextBar selection.nextBar', '3/0w | @3/1h 3/2h | 3/4w ^3:'],
+    ['3/0w | 3/1h ^3/2h | 3/4w', 'selection.previousBar selection.previousBar', '^3/0w | 3/1h 3/2h @3: | 3/4w'],
+    ['3/0w | 3/1h ^3/2h | 3/4w', 'selection.previousBar selection.previousBar selection.nextBar', '3/0w | @3/1h 3/2h ^3: | 3/4w'],
+    ['^3/0w | 3/1h 3/2h | 3/4w', 'selection.bars selection.previous', '@^3/0w | 3/1h 3/2h | 3/4w'],
+    ['6/0w ^3: ; 4/0w', 'selection.bars note.letRing', '@3:6/0lw ^3: ; 4/0lw'],
+  ])('from %s, %s gives %s', (before, run, wanted) => expect(text(before, run)).toBe(wanted))
+
+  it('begins and ends at bar lines, and says that bars are meant whole until events are selected again', () => {
+    expect(after('^3/0w', 'selection.nextBar').selection.whole).toBe(true)
+    expect(after('^3/0w', 'selection.nextBar selection.previous').selection).not.toHaveProperty('whole')
+    expect(after('^3/0w', 'selection.nextBar selection.clear').selection).not.toHaveProperty('whole')
+  })
+})
+
 describe('clipboard', () => {
   it.each([
     ['@3/0q ^3/2q 3/4q', 'clipboard.copy clipboard.paste', '3/0q ^3/0q 3/2q 3/2q 3/4q'],
