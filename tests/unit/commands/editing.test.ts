@@ -93,7 +93,7 @@ describe('moving', () => {
 describe('selecting whole bars', () => {
   it.each([
     ['3/0w | 3/1h ^3/2h | 3/4w', 'selection.nextBar', '3/0w | @3/1h 3/2h ^3: | 3/4w'],
-    ['3/0w | 3/1h ^3/2h | 3/4w', 'selection.nextBar selection.nextBar selection.nextBar', '3/0w | @3/1h 3/2h | 3/4w ^3:'],
+    ['3/0w | 3/1h ^3/2h | 3/4w', 'selection.nextBar selection.nextBar selection.nextBar', '3/0w | @3/1h 3/2h | 3/4w ^3:h'],
     ['3/0w | 3/1h ^3/2h | 3/4w', 'selection.previousBar selection.previousBar', '^3/0w | 3/1h 3/2h @3: | 3/4w'],
     ['3/0w | 3/1h ^3/2h | 3/4w', 'selection.previousBar selection.previousBar selection.nextBar', '3/0w | @3/1h 3/2h ^3: | 3/4w'],
     ['^3/0w | 3/1h 3/2h | 3/4w', 'selection.bars selection.previous', '@^3/0w | 3/1h 3/2h | 3/4w'],
