@@ -1,5 +1,5 @@
-import { ZERO, compare, equals, fraction, isLess, max, subtract, type Fraction } from '../score/fraction'
-import { barLength, meterLength, playedLength, surplus, voiceTotal } from '../score/time'
+import { ZERO, add, compare, equals, fraction, isLess, max, subtract, type Fraction } from '../score/fraction'
+import { barLength, meterLength } from '../score/time'
 import type { Context } from '../score/context'
 import { VOICE_NAMES, type Bar, type Note, type VoiceName } from '../score/types'
 import { beamsOf, type BeamGroup } from './beams'
@@ -46,14 +46,17 @@ function engrave(bar: Bar, { context, carried, pickup }: BarSurroundings): BarNo
   const beams = [...groups.values()].flat()
   const beamed = new Set(beams.flatMap(beam => beam.eventIds))
   const tab = tabMarks(placed, moments, tied)
-  const total = playedLength(bar, context.meter)
-  const missing = missingTime(bar, context)
-  const slices = slicesOf(moments, events, tab, beamed, subtract(total, missing ?? ZERO))
+  const ends = endsOf(placed)
+  const length = barLength(bar, context.meter)
+  const longest = [...ends.values()].reduce(max, ZERO)
+  const missing = isLess(longest, length) ? subtract(length, longest) : null
+  const total = max(length, longest)
+  const slices = slicesOf(moments, events, tab, beamed, longest)
   const reaches = events.filter(event => !event.hidden).map(event => reach(event.notes, event.stem))
   return {
     events, beams, tab, links, slices, total, missing,
     tuplets: voices.flatMap(name => tupletsOf(bar, name, beamed, stems, voices.length)),
-    surplus: surplusOf(bar, context),
+    surplus: [...ends].map(([voice, end]) => ({ voice, amount: subtract(end, length) })).filter(each => !equals(each.amount, ZERO)),
     isPolyphonic: voices.length > 1,
     top: Math.min(0, ...reaches.map(each => each.top)),
     bottom: Math.max(40, ...reaches.map(each => each.bottom)),
@@ -61,19 +64,14 @@ function engrave(bar: Bar, { context, carried, pickup }: BarSurroundings): BarNo
   }
 }
 
-/** Time that no voice fills yet; null when some voice does. */
-export function missingTime(bar: Bar, context: Context): Fraction | null {
-  const length = barLength(bar, context.meter)
-  const longest = VOICE_NAMES.map(name => voiceTotal(bar.voices[name])).reduce(max, ZERO)
-  return isLess(longest, length) ? subtract(length, longest) : null
-}
-
-function surplusOf(bar: Bar, context: Context): BarNotation['surplus'] {
-  return VOICE_NAMES.flatMap((voice) => {
-    if (!bar.voices[voice]?.events.length) return []
-    const amount = surplus(bar.voices[voice], bar, context.meter)
-    return equals(amount, ZERO) ? [] : [{ voice, amount }]
-  })
+/** Where each voice that has events ends. */
+function endsOf(placed: readonly Placed[]): ReadonlyMap<VoiceName, Fraction> {
+  const ends = new Map<VoiceName, Fraction>()
+  for (const name of VOICE_NAMES) {
+    const last = placed.findLast(each => each.voice === name)
+    if (last) ends.set(name, add(last.start, last.duration))
+  }
+  return ends
 }
 
 interface VoiceBeam { readonly eventIds: readonly string[], readonly breaks: readonly number[] }

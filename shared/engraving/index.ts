@@ -1,7 +1,7 @@
 export * from './types'
 export * from './metrics'
 export { carriedKey, carriedOut, linksOf, type BarLinks, type Carried, type Link } from './links'
-export { engraveBar, isSameContext, missingTime, surplusText, tabText, type BarSurroundings } from './bar'
+export { engraveBar, isSameContext, surplusText, tabText, type BarSurroundings } from './bar'
 export { barNumbers, barPlaces, type BarPlace } from './numbers'
 export { columnsOf } from './spacing'
 export { breakIntoSystems, cancelledCount, contextsDrawAlike, fillSystem, isSameRole, layOut, notationAt, prefixWidth, roleAt, type PlacedBar, type Role, type System } from './systems'

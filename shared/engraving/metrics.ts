@@ -32,5 +32,5 @@ export const lanesHeight = (strings: number): number => LANES_TOP + strings * LA
 /** y of a staff position: 0 is the bottom line, each step up is half a space. */
 export const yOfPosition = (position: number): number => STAFF_HEIGHT - position * STAFF_SPACE / 2
 
-/** Width of tab text set at 13.5 points: digits of Alegreya Sans are 0.5 em wide, brackets likewise (measured in the font). */
-export const tabTextWidth = (text: string): number => text.length * 7
+/** Width of tab text set at 14.5 points: digits of Alegreya Sans are 0.5 em wide, brackets likewise (measured in the font). */
+export const tabTextWidth = (text: string): number => text.length * 7.4

@@ -1,9 +1,15 @@
 import { ZERO, add, compare, divide, fraction, multiply, subtract, sum, type Fraction } from './fraction'
 import type { Bar, Length, Meter, Tempo, Tuplet, Voice } from './types'
 
+const plain = new Map<number, Fraction>()
+
 /** A written length without tuplets, in whole notes: each dot adds half of what went before. */
-export const plainLength = (length: Pick<Length, 'base' | 'dots'>): Fraction =>
-  fraction(2 ** (length.dots + 1) - 1, length.base * 2 ** length.dots)
+export function plainLength({ base, dots }: Pick<Length, 'base' | 'dots'>): Fraction {
+  const key = base * 8 + dots
+  let length = plain.get(key)
+  if (!length) plain.set(key, length = fraction(2 ** (dots + 1) - 1, base * 2 ** dots))
+  return length
+}
 
 /** A written length in whole notes, inside its tuplets. */
 export function lengthOf(length: Length, tuplets: readonly Tuplet[] = []): Fraction {

@@ -1,5 +1,6 @@
 import { geometryOf, surplusText, yOfPosition, type BarGeometry, type BarNotation } from '#shared/engraving'
 import { drawInnerLinks } from './links'
+import { patch } from './patch'
 import { drawStaff, type Head, type Pen } from './staff'
 import { svg, words } from './svg'
 import { drawTab } from './tab'
@@ -12,7 +13,7 @@ export interface BarKey {
   readonly strings: number
 }
 
-/** The nodes of one bar. They stay as long as the key is the same. */
+/** The nodes of one bar. They are not touched as long as the key is the same. */
 export interface DrawnBar extends BarKey {
   readonly group: SVGGElement
   /** Moves down when the staff above needs room. */
@@ -33,11 +34,24 @@ function surplusMarks({ notation, width }: BarKey): SVGTextElement[] {
     words(surplusText(amount), width - 3, voice === 'lower' ? yOfPosition(0) + 17 : -7, style))
 }
 
-export function drawBar(pen: Pen, key: BarKey): DrawnBar {
+function drawBar(pen: Pen, id: string, key: BarKey): DrawnBar {
   const geometry = geometryOf(key.notation, key.prefix, key.width)
   const staff = drawStaff(pen, key.notation, geometry.columns)
   const links = drawInnerLinks(key.notation, geometry, staff.heads)
   const tab = drawTab(key.notation, geometry, key.strings)
   tab.append(links.tab)
-  return { ...key, geometry, heads: staff.heads, tab, tabTop: 0, group: svg('g', {}, staff.group, links.staff, tab, ...surplusMarks(key)) }
+  return { ...key, geometry, heads: staff.heads, tab, tabTop: 0, group: svg('g', { 'data-bar': id }, staff.group, links.staff, tab, ...surplusMarks(key)) }
+}
+
+/** Draws a bar; where it was drawn before, its nodes become the new drawing. */
+export function redrawBar(pen: Pen, id: string, key: BarKey, before: DrawnBar | undefined): DrawnBar {
+  const drawn = drawBar(pen, id, key)
+  if (!before) return drawn
+  // Both place themselves; a patch shall not undo that.
+  for (const [old, now] of [[before.group, drawn.group], [before.tab, drawn.tab]] as const) {
+    const place = old.getAttribute('transform')
+    if (place !== null) now.setAttribute('transform', place)
+  }
+  patch(before.group, drawn.group)
+  return { ...drawn, group: before.group, tab: before.tab, tabTop: before.tabTop }
 }

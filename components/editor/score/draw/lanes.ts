@@ -14,13 +14,15 @@ export interface LaneLine {
 
 const HEAD = 6
 
-function lane(line: LaneLine, geometry: BarGeometry): Element {
+function stroke(line: LaneLine, geometry: BarGeometry): string {
   const left = line.starts ? xAt(geometry, line.from.n / line.from.d) + HEAD : 0
   const right = line.ends ? xAt(geometry, line.to.n / line.to.d) + HEAD - 3 : geometry.width
   const y = LANES_TOP + (line.string - 1) * LANE_SPACE
-  return svg('path', { d: `M${at(left)} ${at(y)}H${at(Math.max(left + 2, Math.min(right, geometry.width)))}`, class: line.open ? 'lane lane-open' : 'lane' })
+  return `M${at(left)} ${at(y)}H${at(Math.max(left + 2, Math.min(right, geometry.width)))}`
 }
 
 /** A thin line for each string that sounds, ordered by string; y = 0 is the last string of the tab. */
-export const drawLanes = (lanes: readonly LaneLine[], geometry: BarGeometry): SVGGElement =>
-  svg('g', {}, ...lanes.map(line => lane(line, geometry)))
+export function drawLanes(lanes: readonly LaneLine[], geometry: BarGeometry): SVGGElement {
+  const path = (open: boolean): string => lanes.filter(line => line.open === open).map(line => stroke(line, geometry)).join('')
+  return svg('g', {}, svg('path', { d: path(false), class: 'lane' }), svg('path', { d: path(true), class: 'lane lane-open' }))
+}

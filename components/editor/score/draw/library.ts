@@ -21,7 +21,7 @@ async function load(): Promise<Vex> {
   const vex = await import('vexflow/core')
   await Promise.all([
     vex.Font.load('Bravura', '/fonts/bravura.woff2', { display: 'block' }),
-    document.fonts.load('500 13.5px "Alegreya Sans"'),
+    document.fonts.load('500 14.5px "Alegreya Sans"'),
   ])
   vex.VexFlow.setFonts('Bravura')
   vex.Element.setTextMeasurementCanvas(quickMeasuring(document.createElement('canvas')))

@@ -33,6 +33,7 @@ export class Sheet {
   private width = 0
   private scale = 1
   private settling: ReturnType<typeof setTimeout> | undefined
+  private ringing = 0
   private readonly pen: Pen
   private readonly near = new IntersectionObserver(entries => this.seen(entries), { rootMargin: `${NEAR}px 0px` })
 
@@ -81,6 +82,8 @@ export class Sheet {
 
   destroy(): void {
     clearTimeout(this.settling)
+    cancelAnimationFrame(this.ringing)
+    this.score = null
     this.near.disconnect()
     this.root.replaceChildren()
   }
@@ -190,9 +193,15 @@ export class Sheet {
       if (index > 0 && !bySystem.has(system)) bySystem.set(system, [])
     }
     for (const [system, positions] of bySystem) this.views[system]!.redraw(score, positions)
-    // What rings over from the changed bar shows in the systems that follow.
-    const last = Math.max(...bySystem.keys())
-    for (const view of this.views.slice(last + 1, last + 3)) view.drawLanes(score)
+    this.ringOnLater(Math.max(...bySystem.keys()))
+  }
+
+  /** What rings over from a changed bar into the systems that follow shows after the frame that shows the change. */
+  private ringOnLater(system: number): void {
+    cancelAnimationFrame(this.ringing)
+    this.ringing = requestAnimationFrame(() => setTimeout(() => {
+      if (this.score) for (const view of this.views.slice(system + 1, system + 3)) view.drawLanes(this.score)
+    }))
   }
 
   /** Bars added at the end join the last system, or begin one, and leave the others where they are. */

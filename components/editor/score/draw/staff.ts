@@ -26,10 +26,17 @@ export interface StaffDrawing { readonly group: SVGGElement, readonly heads: Rea
 
 export function createPen(vex: Vex): Pen {
   const context = new vex.SVGContext(document.createElement('div'))
-  // A group for every head and stem, and rectangles for the pointer, would treble the nodes; geometry tells what is clicked.
+  // Rectangles for the pointer are not needed, as geometry tells what is clicked; nor is a group for every head and stem.
   context.pointerRect = () => context
-  context.openGroup = () => context.parent
-  context.closeGroup = () => {}
+  const parents: SVGGElement[] = []
+  context.openGroup = (name) => {
+    parents.push(context.parent)
+    if (name === 'stavenote') context.parent = context.parent.appendChild(svg('g'))
+    return context.parent
+  }
+  context.closeGroup = () => {
+    context.parent = parents.pop()!
+  }
   const stave = new vex.Stave(0, -STAFF_HEIGHT, 100, { leftBar: false, rightBar: false })
   stave.setContext(context)
   // A note's x then is its column's.

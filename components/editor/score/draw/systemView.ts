@@ -1,6 +1,6 @@
 import { LANES_TOP, carriedOut, lanesHeight, notationAt, barNumbers, tabHeight, type BarNotation, type System } from '#shared/engraving'
 import type { Score } from '#shared/score/types'
-import { drawBar, isDrawnFrom, type DrawnBar } from './bar'
+import { isDrawnFrom, redrawBar, type DrawnBar } from './bar'
 import { drawFrame } from './frame'
 import { drawLanes, type LaneLine } from './lanes'
 import { drawCrossingLinks } from './links'
@@ -11,7 +11,7 @@ export interface Surface {
   readonly pen: Pen
   /** Points of a full line: on paper each system takes its part of the page's width. */
   readonly line: number
-  /** Nodes of bars by id: a bar that moves to another system keeps them. */
+  /** Drawings of bars by id: a bar that moves to another system keeps its nodes. */
   readonly bars: Map<string, DrawnBar>
   readonly lanesOf: ((score: Score, index: number) => readonly LaneLine[]) | null
 }
@@ -23,6 +23,11 @@ const BELOW = 22
 /** The tab stands at least this far below the staff's top line. */
 const TAB_TOP = 104
 const TAB_GAP = 34
+
+function setTransform(node: SVGElement, x: number, y: number): void {
+  const transform = `translate(${at(x)} ${at(y)})`
+  if (node.getAttribute('transform') !== transform) node.setAttribute('transform', transform)
+}
 
 /** One system on the sheet: a block with its own drawing, layers from back to front. */
 export class SystemView {
@@ -140,7 +145,7 @@ export class SystemView {
   private moveTab(drawn: DrawnBar): void {
     if (drawn.tabTop === this.tabTop) return
     drawn.tabTop = this.tabTop
-    drawn.tab.setAttribute('transform', `translate(0 ${this.tabTop})`)
+    setTransform(drawn.tab, 0, this.tabTop)
   }
 
   /** The bar's nodes, drawn if need be, at their place in this system. */
@@ -150,15 +155,10 @@ export class SystemView {
     const { id } = this.score.bars[placed.index]!
     const key = { notation: this.notation(position), width: placed.width, prefix: placed.prefix, strings: this.score.head.strings.length }
     const before = bars.get(id)
-    const drawn = isDrawnFrom(before, key) ? before : drawBar(pen, key)
-    if (drawn !== before) {
-      drawn.group.dataset.bar = id
-      before?.group.remove()
-      bars.set(id, drawn)
-    }
+    const drawn = isDrawnFrom(before, key) ? before : redrawBar(pen, id, key, before)
+    if (drawn !== before) bars.set(id, drawn)
     if (drawn.group.parentNode !== this.barLayer) this.barLayer.append(drawn.group)
-    const transform = `translate(${at(placed.x)} 0)`
-    if (drawn.group.getAttribute('transform') !== transform) drawn.group.setAttribute('transform', transform)
+    setTransform(drawn.group, placed.x, 0)
     this.moveTab(drawn)
     return drawn
   }
@@ -173,7 +173,7 @@ export class SystemView {
     const bars = this.system.bars.map((placed, position) => ({ ...this.barAt(position), x: placed.x }))
     const hasNext = after < this.score.bars.length && carriedOut(this.score.bars[after - 1]).length > 0
     const { staff, tab } = drawCrossingLinks(bars, hasNext ? notationAt(this.score, after) : undefined, this.system.width)
-    tab.setAttribute('transform', `translate(0 ${this.tabTop})`)
+    setTransform(tab, 0, this.tabTop)
     this.links.replaceChildren(staff, tab)
   }
 
@@ -181,7 +181,7 @@ export class SystemView {
   drawLanes(score: Score): void {
     const { lanesOf } = this.surface
     if (!lanesOf || !this.isDrawn) return
-    this.lanes.setAttribute('transform', `translate(0 ${this.tabTop + tabHeight(score.head.strings.length)})`)
+    setTransform(this.lanes, 0, this.tabTop + tabHeight(score.head.strings.length))
     const seen = new Set<string>()
     this.system.bars.forEach((placed, position) => {
       const { id } = score.bars[placed.index]!
@@ -192,7 +192,7 @@ export class SystemView {
       if (before?.lines === lines && before.drawn === drawn && before.x === placed.x) return
       before?.node.remove()
       const node = drawLanes(lines, drawn.geometry)
-      node.setAttribute('transform', `translate(${at(placed.x)} 0)`)
+      setTransform(node, placed.x, 0)
       this.lanes.append(node)
       this.laneNodes.set(id, { lines, drawn, x: placed.x, node })
     })

@@ -1,9 +1,9 @@
 import { HEAD_WIDTH, STRING_SPACE, tabTextWidth, type BarGeometry, type BarNotation, type TabMark } from '#shared/engraving'
 import { at, svg, words } from './svg'
 
-export const TAB_FONT = { 'font-family': 'Alegreya Sans', 'font-size': 13.5, 'font-weight': 500, 'text-anchor': 'middle', 'style': 'font-variant-numeric: lining-nums tabular-nums' } as const
-/** Half the height of a lining digit of 13.5 points. */
-const DIGIT_RISE = 4.4
+export const TAB_FONT = { 'font-family': 'Alegreya Sans', 'font-size': 14.5, 'font-weight': 500, 'text-anchor': 'middle', 'style': 'font-variant-numeric: lining-nums tabular-nums' } as const
+/** Half the height of a lining digit of 14.5 points. */
+const DIGIT_RISE = 4.7
 
 export const tabX = (mark: Pick<TabMark, 'slice' | 'beside'>, geometry: BarGeometry): number =>
   geometry.columns[mark.slice]! + HEAD_WIDTH / 2 + (mark.beside ? 14 : 0)
