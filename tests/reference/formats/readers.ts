@@ -1,6 +1,7 @@
 import { existsSync, readFileSync } from 'node:fs'
 import { parseXml, type XmlElement } from '@rgrove/parse-xml'
 import { parseMidi } from 'midi-file'
+import type { VerovioToolkit } from 'verovio/esm'
 import { validateXML } from 'xmllint-wasm'
 
 /** Independent readers of what is exported: the W3C schema by xmllint (libxml2), and Verovio's MusicXML import. */
@@ -25,17 +26,14 @@ export async function schemaProblems(texts: readonly string[]): Promise<string[]
 
 export interface HeardNote { readonly midi: number, /** In quarters from the start. */ readonly start: number, readonly length: number }
 
-interface Toolkit { loadData: (text: string) => boolean | number, renderToMIDI: () => string, getMEI: (options?: object) => string, setOptions: (options: object) => void }
+let toolkit: Promise<VerovioToolkit> | undefined
 
-let toolkit: Promise<Toolkit> | undefined
-
-async function createToolkit(): Promise<Toolkit> {
-  const { default: createModule } = await import('verovio/wasm') as { default: () => Promise<unknown> }
-  const { VerovioToolkit } = await import('verovio/esm') as { VerovioToolkit: new (module: unknown) => Toolkit }
-  return new VerovioToolkit(await createModule())
+async function createToolkit(): Promise<VerovioToolkit> {
+  const [{ default: createModule }, verovio] = await Promise.all([import('verovio/wasm'), import('verovio/esm')])
+  return new verovio.VerovioToolkit(await createModule())
 }
 
-export async function verovio(text: string): Promise<Toolkit> {
+export async function verovio(text: string): Promise<VerovioToolkit> {
   const loaded = await (toolkit ??= createToolkit())
   if (!loaded.loadData(text)) throw new Error('Verovio could not load the file')
   return loaded
