@@ -1,4 +1,5 @@
 import { cursorAt, EMPTY_VOICE, END, placeOf, spansOf, type EditorState, type IdSource, type Place, type Transaction } from '../editor'
+import { isEqual } from '../score/equal'
 import { PARTIAL_AT_FRET } from '../score/sounding'
 import type { Bar, Head, LinkKind, Note, RingRule } from '../score/types'
 import { removeBars } from './bar'
@@ -9,16 +10,20 @@ import { newEvent } from './entry'
 const here = ({ score, selection }: EditorState): Place => placeOf(score, selection.cursor)
 
 const noNote = (state: EditorState, label: string): Transaction =>
-  ({ label, notice: `There is no note on string ${state.selection.cursor.string} here.` })
+  ({ label, notice: state.selection.anchor ? 'There is no note in the selection.' : `There is no note on string ${state.selection.cursor.string} here.` })
 
 /** Changes the note under the cursor, or every selected note, where the first one says which way. */
 function changeNotes(state: EditorState, label: string, change: (note: Note, bar: Bar) => Note): Transaction {
   const { anchor, cursor } = state.selection
+  const changed = (note: Note, bar: Bar): Note => {
+    const next = change(note, bar)
+    return isEqual(next, note) ? note : next
+  }
   const edits = changeEvents(state, (event, span) => {
-    const notes = event.notes.map(note => (anchor || note.string === cursor.string ? change(note, span.bar) : note))
+    const notes = event.notes.map(note => (anchor || note.string === cursor.string ? changed(note, span.bar) : note))
     return notes.every((note, index) => note === event.notes[index]) ? event : { ...event, notes }
   })
-  return edits.length ? { label, edits } : noNote(state, label)
+  return edits.length || deciding(state) ? { label, edits } : noNote(state, label)
 }
 
 /** The note that decides which way a toggle goes: the selection's first, else the one under the cursor. */

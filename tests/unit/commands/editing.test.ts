@@ -42,6 +42,11 @@ describe('techniques', () => {
     expect(text('{ring=written} ^3/0q', 'note.letRing', { ring: 'let-ring' })).toBe('{ring=written} ^3/0lq')
   })
 
+  it('leaves bars alone in which it changes nothing', () => {
+    checkCommand('note.pullOff', '@1/2pw | ^1/0w', '@1/2w | ^1/0w')
+    expect(after('@zq ^zq', 'note.tie').notice).toBe('There is no note in the selection.')
+  })
+
   it('says why there is no harmonic', () => {
     expect(after('^3/6q', 'note.harmonic').notice).toMatch(/^No natural harmonic sounds over fret 6/)
     expect(after('^2:3/6q', 'note.harmonic').notice).toBe('There is no note on string 2 here.')
