@@ -60,11 +60,16 @@ async function settle(queue: KeptQueue, { store, transport }: OpenOptions): Prom
  */
 export async function openWithUnsent(options: OpenOptions): Promise<Opened> {
   const { store, clientId, load } = options
+  // Asked for at once; only where a closed tab's batch has gone in since it is asked for again.
+  const early = load()
+  early.catch(() => null)
   const left: KeptQueue[] = []
-  for (const queue of await store.queues().catch(() => [])) {
+  const kept = await store.queues().catch(() => [])
+  const before = new Map(kept.map(queue => [queue.clientId, queue.base]))
+  for (const queue of kept) {
     if (!await options.isLive(queue.clientId)) left.push(queue.refused || !queue.unsent.length ? queue : await settle(queue, options))
   }
-  const detail = await load()
+  const detail = left.some(queue => queue.base !== before.get(queue.clientId)) ? await load() : await early
   const found = left.filter(queue => !queue.refused)
   const mine = found.flatMap(queue => queue.unsent)
   const rebased = rebaseOnto(detail.score, mine)

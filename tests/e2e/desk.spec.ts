@@ -274,6 +274,7 @@ test('print shows the sheet alone, black on white in the night palette too', asy
   await type(page, '3')
   await page.emulateMedia({ media: 'print', colorScheme: 'dark' })
   await expect(page.getByRole('heading', { name: 'On paper' })).toBeVisible()
+  await expect(page.getByRole('banner')).toBeHidden()
   await expect(page.getByRole('button', { name: /Play/ })).toBeHidden()
   await expect(page.getByTestId('status')).toBeHidden()
   await expect(page.getByRole('img', { name: /^Neck/ })).toBeHidden()
