@@ -9,7 +9,7 @@ export interface Current { readonly user: SessionUser, readonly sessionId: strin
 
 async function find(event: H3Event): Promise<Current | null> {
   // Reading a session makes one where there is none; a visitor needs no cookie.
-  if (!getCookie(event, useRuntimeConfig(event).session.name!)) return null
+  if (!getCookie(event, useRuntimeConfig().session.name!)) return null
   const { secure } = await getUserSession(event)
   if (!isUuid(secure?.sessionId)) return null
   const owner = await sessionOwner(await database(), secure.sessionId)
