@@ -1,6 +1,10 @@
 import type { Clock, Saver } from './saver'
 
-/** The browser's clock. A frame that is not drawn, in a tab behind others, counts as painted after a tenth of a second. */
+/** Within this time (ms) what waits for a quiet moment is done, also in a tab behind others, which draws no frame. */
+const LATEST = 200
+const whenIdle = (call: () => void) => (typeof requestIdleCallback === 'function' ? void requestIdleCallback(call, { timeout: LATEST }) : void setTimeout(call))
+
+/** The browser's clock. */
 export const browserClock: Clock = {
   now: () => Date.now(),
   after(ms, call) {
@@ -14,8 +18,8 @@ export const browserClock: Clock = {
       if (!done) call()
       done = true
     }
-    requestAnimationFrame(() => setTimeout(once))
-    setTimeout(once, 100)
+    requestAnimationFrame(() => whenIdle(once))
+    setTimeout(once, LATEST)
   },
 }
 

@@ -18,7 +18,7 @@ export interface Clock {
   readonly after: (ms: number, call: () => void) => () => void
   /** From 0 up to 1. */
   readonly random: () => number
-  /** Calls back when the frame in hand is on the screen. */
+  /** Calls back soon, when the frame in hand is on the screen and nothing more pressing is to be done. */
   readonly afterPaint: (call: () => void) => void
 }
 
@@ -76,8 +76,11 @@ export function createSaver(options: SaverOptions): Saver {
   let shown = ''
 
   function publish(): void {
-    // While the typing goes well the count is nobody's concern, and every key would redraw the header.
-    const status: SaveStatus = { unsent: hindrance || !kept ? queue.unsent.length : Math.min(1, queue.unsent.length), kept, hindrance, savedAt }
+    // Edits are not said to be kept before they are: the write that is due publishes.
+    if (hindrance && kept && unwritten.length) return
+    // While all goes well the count is nobody's concern, and every key would redraw the header.
+    const { length } = queue.unsent
+    const status: SaveStatus = { unsent: hindrance || !kept ? length : Math.min(1, length), kept, hindrance, savedAt }
     const text = JSON.stringify(status)
     if (text !== shown) options.onStatus(status)
     shown = text
