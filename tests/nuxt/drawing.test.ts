@@ -1,3 +1,4 @@
+import fc from 'fast-check'
 import * as vex from 'vexflow/core'
 import { afterEach, beforeAll, beforeEach, describe, expect, it, vi } from 'vitest'
 import { geometryOf, notationAt } from '#shared/engraving'
@@ -8,6 +9,7 @@ import { patch } from '../../components/editor/score/draw/patch'
 import { quickClone, quickLookup, withQuickClones } from '../../components/editor/score/draw/quick'
 import { Sheet } from '../../components/editor/score/draw/sheet'
 import { createPen, drawStaff } from '../../components/editor/score/draw/staff'
+import { scoreArbitrary } from '../support/arbitraries'
 import { denseScore } from '../support/dense'
 import { parseScore } from '../support/score'
 
@@ -145,6 +147,11 @@ describe('the sheet', { timeout: 30_000 }, () => {
     return { ...score, bars: score.bars.map((bar, at) => (at !== index ? bar : { ...bar, voices: { ...bar.voices, upper: { events: bar.voices.upper!.events.map((event, place) => (place ? event : { ...event, notes: event.notes.map(note => ({ ...note, fret })) })) } } })) }
   }
 
+  /** The first score with the voices of the second, as far as there are bars. */
+  const withContentOf = (first: Score, second: Score): Score => ({
+    ...first, bars: first.bars.map((bar, at) => ({ ...bar, voices: second.head.strings.length > first.head.strings.length ? bar.voices : second.bars[at]?.voices ?? {} })),
+  })
+
   it('draws one group for each bar', () => {
     const score = denseScore(6)
     show(score)
@@ -228,6 +235,25 @@ describe('the sheet', { timeout: 30_000 }, () => {
     expect(below).toMatchObject({ voice: 'upper', string: cursor.string })
     expect(sheet.systemNeighbour(below, -1)).toEqual(cursor)
     expect(sheet.systemNeighbour(cursor, -1)).toBeNull()
+  })
+
+  it('draws any score, however strange, and the same after any other', { timeout: 120_000 }, () => {
+    fc.assert(fc.property(scoreArbitrary(3), scoreArbitrary(3), (first, second) => {
+      const fresh = document.createElement('div')
+      const other = new Sheet(fresh, vex, lanesOfBar)
+      other.resize(900)
+      other.show(second, null)
+      other.drawAll()
+      // The same bars' ids with other content, then another score altogether.
+      show(first)
+      show(withContentOf(first, second))
+      sheet.show(second, null)
+      sheet.drawAll()
+      const bars = (of: HTMLElement): string[] => [...of.querySelectorAll('[data-bar]')].map(node => node.textContent)
+      expect(bars(root)).toEqual(bars(fresh))
+      expect(bars(root).length).toBe(second.bars.length)
+      other.destroy()
+    }), { numRuns: 12 })
   })
 
   it('runs no string line through a fret', () => {

@@ -1,13 +1,13 @@
-import { carriedKey, carriedOut, cellAt, contextsDrawAlike, fillSystem, geometryOf, layOut, notationAt, yOfPosition, type BarGeometry, type System } from '#shared/engraving'
+import { carriedKey, carriedOut, fillSystem, layOut, notationAt, type System } from '#shared/engraving'
 import { END, type Cursor, type Selection } from '#shared/editor/state'
-import type { Bar, Score } from '#shared/score/types'
-import type { DrawnBar } from './bar'
+import type { Score } from '#shared/score/types'
+import { changedBars, isAppended } from './changes'
 import type { LaneLine } from './lanes'
-import { CursorBox, columnX, drawPlaying, drawSelection, stretchIn } from './overlay'
+import { Layout } from './layout'
+import { CursorBox, drawPlaying, drawSelection, stretchIn } from './overlay'
 import { createPen, type Pen } from './staff'
 import { SystemView } from './systemView'
 import type { Vex } from './library'
-import { STRING_SPACE } from '#shared/engraving'
 
 export interface Playing { readonly barId: string, readonly eventIds: readonly string[] }
 export type LanesOf = (score: Score, index: number) => readonly LaneLine[]
@@ -22,10 +22,7 @@ const NEAR = 700
  * draws no bar, and what lies outside the window is drawn when it comes near.
  */
 export class Sheet {
-  private score: Score | null = null
-  private views: SystemView[] = []
-  private indexOf = new Map<string, number>()
-  private bars = new Map<string, DrawnBar>()
+  private readonly layout = new Layout()
   private selection: Selection | null = null
   private playing: Playing | null = null
   private readonly cursorBox = new CursorBox()
@@ -43,8 +40,8 @@ export class Sheet {
 
   /** Shows a score with its cursor; draws the bars that differ from the one shown before. */
   show(score: Score, selection: Selection | null): void {
-    const before = this.score
-    this.score = score
+    const before = this.layout.score
+    this.layout.score = score
     this.selection = selection
     if (!before || !this.width) return this.rebuild()
     if (before === score) return this.drawOverlay()
@@ -77,96 +74,31 @@ export class Sheet {
   /** Draws what is not drawn yet, for print. */
   drawAll(): void {
     if (this.settling) this.settle()
-    for (const view of this.views) if (!view.isDrawn && this.score) view.draw(this.score)
+    for (const view of this.layout.views) if (!view.isDrawn && this.layout.score) view.draw(this.layout.score)
   }
 
   destroy(): void {
     clearTimeout(this.settling)
     cancelAnimationFrame(this.ringing)
-    this.score = null
+    this.layout.score = null
     this.near.disconnect()
     this.root.replaceChildren()
   }
 
-  /** The cell under a point of the window. @param voice whose events are meant where both voices stand */
+  /** The cell under a point of the window. @param current whose voice is meant where both stand */
   cellAtPoint(clientX: number, clientY: number, current: Cursor | null): Cursor | null {
-    const view = this.viewAtY(clientY)
-    if (!view || !this.score) return null
-    const { x, y } = view.local(clientX, clientY)
-    const placed = view.system.bars.find(bar => x < bar.x + bar.width) ?? view.system.bars.at(-1)!
-    const bar = this.score.bars[placed.index]!
-    const geometry = this.geometry(placed.index)
-    const notation = notationAt(this.score, placed.index)
-    const strings = this.score.head.strings.length
-    const inTab = y > view.tabTop - STRING_SPACE * 1.5
-    const pointed = Math.min(strings, Math.max(1, Math.round((y - view.tabTop) / STRING_SPACE) + 1))
-    const nearest = (voice: Cursor['voice']) => cellAt(geometry, voice, x - placed.x)
-    const voice = current?.voice ?? 'upper'
-    const eventId = nearest(voice)
-    const noteOf = (id: string, string: number) => notation.events.find(each => each.eventId === id)?.notes.find(note => note.string === string)
-    if (!inTab) {
-      const notes = notation.events.find(each => each.eventId === eventId)?.notes ?? []
-      const note = [...notes].sort((a, b) => Math.abs(yOfPosition(a.position) - y) - Math.abs(yOfPosition(b.position) - y))[0]
-      return { barId: bar.id, voice, eventId, string: note?.string ?? current?.string ?? 1 }
-    }
-    // A number of another voice under the pointer is what was meant.
-    const other = noteOf(eventId, pointed)
-      ? undefined
-      : notation.tab.find(mark => mark.string === pointed && mark.voice !== voice && Math.abs(geometry.columns[mark.slice]! + 6 - (x - placed.x)) < 12)
-    return other ? { barId: bar.id, voice: other.voice, eventId: other.eventId, string: pointed } : { barId: bar.id, voice, eventId, string: pointed }
+    return this.layout.cellAtPoint(clientX, clientY, current)
   }
 
   /** The cell above or below a cursor's, one system on; null at the first and last. */
   systemNeighbour(cursor: Cursor, direction: 1 | -1): Cursor | null {
-    const here = this.placeOf(cursor)
-    const view = here && this.views[here.system + direction]
-    if (!here || !view || !this.score) return null
-    const placed = view.system.bars.find(bar => here.x < bar.x + bar.width) ?? view.system.bars.at(-1)!
-    return { ...cursor, barId: this.score.bars[placed.index]!.id, eventId: cellAt(this.geometry(placed.index), cursor.voice, here.x - placed.x) }
+    return this.layout.systemNeighbour(cursor, direction)
   }
 
   /** Brings the cursor's system into the window. */
   scrollToCursor(behavior: ScrollBehavior = 'auto'): void {
-    const here = this.selection && this.placeOf(this.selection.cursor)
-    if (here) this.views[here.system]?.element.scrollIntoView({ block: 'nearest', behavior })
-  }
-
-  private placeOf(cursor: Pick<Cursor, 'barId' | 'voice' | 'eventId'>): { system: number, index: number, x: number, inBar: number } | null {
-    const index = this.indexOf.get(cursor.barId)
-    if (index === undefined) return null
-    const system = this.systemOf(index)
-    const placed = this.views[system]?.system.bars.find(bar => bar.index === index)
-    if (!placed) return null
-    const inBar = columnX(this.geometry(index), cursor)
-    return { system, index, x: placed.x + inBar, inBar }
-  }
-
-  private geometry(index: number): BarGeometry {
-    const placed = this.views[this.systemOf(index)]!.system.bars.find(bar => bar.index === index)!
-    const notation = notationAt(this.score!, index)
-    const drawn = this.bars.get(this.score!.bars[index]!.id)
-    return drawn?.notation === notation && drawn.width === placed.width && drawn.prefix === placed.prefix ? drawn.geometry : geometryOf(notation, placed.prefix, placed.width)
-  }
-
-  /** Position of the system that holds the bar at `index`. */
-  private systemOf(index: number): number {
-    let [low, high] = [0, this.views.length - 1]
-    while (low < high) {
-      const middle = (low + high) >> 1
-      if (this.views[middle]!.system.bars.at(-1)!.index < index) low = middle + 1
-      else high = middle
-    }
-    return low
-  }
-
-  private viewAtY(clientY: number): SystemView | undefined {
-    let [low, high] = [0, this.views.length - 1]
-    while (low < high) {
-      const middle = (low + high) >> 1
-      if (this.views[middle]!.clientTop().bottom < clientY) low = middle + 1
-      else high = middle
-    }
-    return this.views[low]
+    const here = this.selection && this.layout.placeOf(this.selection.cursor)
+    if (here) this.layout.views[here.system]?.element.scrollIntoView({ block: 'nearest', behavior })
   }
 
   /** Width for the systems in points; the bracket stands left of it. */
@@ -183,16 +115,16 @@ export class Sheet {
     }
     const bySystem = new Map<number, number[]>()
     for (const index of touched) {
-      const system = this.systemOf(index)
-      const position = this.views[system]!.system.bars.findIndex(bar => bar.index === index)
+      const system = this.layout.systemOf(index)
+      const position = this.layout.views[system]!.system.bars.findIndex(bar => bar.index === index)
       bySystem.set(system, [...(bySystem.get(system) ?? []), position])
     }
     // A link across a system's end is drawn in both.
     for (const index of touched) {
-      const system = this.systemOf(index - 1)
+      const system = this.layout.systemOf(index - 1)
       if (index > 0 && !bySystem.has(system)) bySystem.set(system, [])
     }
-    for (const [system, positions] of bySystem) this.views[system]!.redraw(score, positions)
+    for (const [system, positions] of bySystem) this.layout.views[system]!.redraw(score, positions)
     this.ringOnLater(Math.max(...bySystem.keys()))
   }
 
@@ -200,15 +132,15 @@ export class Sheet {
   private ringOnLater(system: number): void {
     cancelAnimationFrame(this.ringing)
     this.ringing = requestAnimationFrame(() => setTimeout(() => {
-      if (this.score) for (const view of this.views.slice(system + 1, system + 3)) view.drawLanes(this.score)
+      if (this.layout.score) for (const view of this.layout.views.slice(system + 1, system + 3)) view.drawLanes(this.layout.score)
     }))
   }
 
   /** Bars added at the end join the last system, or begin one, and leave the others where they are. */
   private append(before: Score, score: Score): boolean {
-    const last = this.views.at(-1)
+    const last = this.layout.views.at(-1)
     if (!last || !isAppended(before, score)) return false
-    score.bars.slice(before.bars.length).forEach((bar, offset) => this.indexOf.set(bar.id, before.bars.length + offset))
+    score.bars.slice(before.bars.length).forEach((bar, offset) => this.layout.indexOf.set(bar.id, before.bars.length + offset))
     const from = last.system.bars[0]!.index
     const joined = fillSystem(score, from, score.bars.length, this.lineWidth)
     const isLoose = joined.bars.every(bar => bar.width >= notationAt(score, bar.index).least + bar.prefix) && joined.bars.length <= 6
@@ -217,7 +149,7 @@ export class Sheet {
     if (isLoose) last.setSystem(joined, score)
     else {
       last.setSystem(fillSystem(score, from, before.bars.length, this.lineWidth), score)
-      this.views.push(this.addView(fillSystem(score, before.bars.length, score.bars.length, this.lineWidth), score))
+      this.layout.views.push(this.addView(fillSystem(score, before.bars.length, score.bars.length, this.lineWidth), score))
     }
     const elsewhere = changed.filter(index => index < from)
     if (elsewhere.length) this.redraw(before, score, elsewhere)
@@ -237,18 +169,18 @@ export class Sheet {
 
   /** Breaks the score into systems anew. Systems and bars that come out the same keep their nodes. */
   private rebuild(anew = false): void {
-    const { score } = this
+    const { score } = this.layout
     if (!score || !this.width) return
     if (anew) this.dropViews()
     const systems = layOut(score, this.lineWidth)
-    this.indexOf = new Map(score.bars.map((bar, index) => [bar.id, index]))
-    for (const view of this.views.splice(systems.length)) this.dropView(view)
+    this.layout.indexOf = new Map(score.bars.map((bar, index) => [bar.id, index]))
+    for (const view of this.layout.views.splice(systems.length)) this.dropView(view)
     systems.forEach((system, position) => {
-      const view = this.views[position]
+      const view = this.layout.views[position]
       if (view) view.setSystem(system, score)
-      else this.views.push(this.addView(system, score))
+      else this.layout.views.push(this.addView(system, score))
     })
-    for (const id of this.bars.keys()) if (!this.indexOf.has(id)) this.bars.delete(id)
+    for (const id of this.layout.bars.keys()) if (!this.layout.indexOf.has(id)) this.layout.bars.delete(id)
     this.drawFirst(score)
     this.drawOverlay()
   }
@@ -256,7 +188,7 @@ export class Sheet {
   /** What is in the window at first is drawn at once; the observer tells of the rest. */
   private drawFirst(score: Score): void {
     let room = 900
-    for (const view of this.views) {
+    for (const view of this.layout.views) {
       if (room < 0) return
       if (!view.isDrawn) view.draw(score)
       room -= view.height * this.scale
@@ -264,7 +196,7 @@ export class Sheet {
   }
 
   private addView(system: System, score: Score): SystemView {
-    const view = new SystemView(system, score, this.scale, { pen: this.pen, line: this.lineWidth, bars: this.bars, lanesOf: this.lanesOf })
+    const view = new SystemView(system, score, this.scale, { pen: this.pen, line: this.lineWidth, bars: this.layout.bars, lanesOf: this.lanesOf })
     this.root.append(view.element)
     this.near.observe(view.element)
     return view
@@ -276,37 +208,37 @@ export class Sheet {
   }
 
   private dropViews(): void {
-    for (const view of this.views.splice(0)) this.dropView(view)
-    this.bars.clear()
+    for (const view of this.layout.views.splice(0)) this.dropView(view)
+    this.layout.bars.clear()
   }
 
   private seen(entries: readonly IntersectionObserverEntry[]): void {
     const arrived = new Set(entries.filter(entry => entry.isIntersecting).map(entry => entry.target))
-    for (const view of this.views) if (arrived.has(view.element) && this.score && !view.isDrawn) view.draw(this.score)
+    for (const view of this.layout.views) if (arrived.has(view.element) && this.layout.score && !view.isDrawn) view.draw(this.layout.score)
   }
 
   private drawOverlay(): void {
-    const { score, selection } = this
+    const { selection, layout: { score } } = this
     for (const node of this.highlights.splice(0)) node.remove()
     if (!score) return
     const strings = score.head.strings.length
     if (selection?.anchor) this.drawStretch(selection.anchor, selection.cursor, strings)
-    const cursor = selection && this.placeOf(selection.cursor)
-    const standing = cursor && this.views[cursor.system]
+    const cursor = selection && this.layout.placeOf(selection.cursor)
+    const standing = cursor && this.layout.views[cursor.system]
     if (standing) this.cursorBox.place(standing.overlay, cursor.x, selection.cursor.string, strings, standing.tabTop)
     else this.cursorBox.hide()
-    const sounding = this.playing && this.placeOf({ barId: this.playing.barId, voice: 'upper', eventId: this.playing.eventIds[0] ?? END })
+    const sounding = this.playing && this.layout.placeOf({ barId: this.playing.barId, voice: 'upper', eventId: this.playing.eventIds[0] ?? END })
     if (sounding) {
-      const view = this.views[sounding.system]!
+      const view = this.layout.views[sounding.system]!
       this.highlight(view, drawPlaying(sounding.x, strings, view.tabTop))
     }
   }
 
   private drawStretch(anchor: Cursor, cursor: Cursor, strings: number): void {
-    const ends = [this.placeOf(anchor), this.placeOf(cursor)].flatMap(end => end ?? [])
+    const ends = [this.layout.placeOf(anchor), this.layout.placeOf(cursor)].flatMap(end => end ?? [])
     if (ends.length < 2) return
     const [from, to] = ends.map(({ index, inBar, system }) => ({ index, x: inBar, system })).sort((a, b) => a.index - b.index || a.x - b.x)
-    for (const view of this.views.slice(from!.system, to!.system + 1)) {
+    for (const view of this.layout.views.slice(from!.system, to!.system + 1)) {
       const stretch = stretchIn(view.system, from!, to!)
       if (stretch) this.highlight(view, drawSelection(stretch.from, stretch.to, strings, view.tabTop))
     }
@@ -318,23 +250,3 @@ export class Sheet {
     this.highlights.push(node)
   }
 }
-
-/** Positions of the bars that differ in their voices only; null where the score has another shape, look or context. */
-function changedBars(before: Score, after: Score): readonly number[] | null {
-  if (before.bars.length !== after.bars.length || !contextsDrawAlike(before, after)) return null
-  const changed: number[] = []
-  for (let index = 0; index < after.bars.length; index++) {
-    const [old, now] = [before.bars[index]!, after.bars[index]!]
-    if (old === now) continue
-    if (!isSameFrame(old, now)) return null
-    changed.push(index)
-  }
-  return changed
-}
-
-const isSameFrame = (a: Bar, b: Bar): boolean =>
-  a.id === b.id && a.meter === b.meter && a.key === b.key && a.tempo === b.tempo && a.length === b.length
-  && a.repeatStart === b.repeatStart && a.repeatEnd === b.repeatEnd && a.ring === b.ring
-
-const isAppended = (before: Score, after: Score): boolean =>
-  after.bars.length > before.bars.length && before.bars.every((bar, index) => after.bars[index]!.id === bar.id)

@@ -1,6 +1,7 @@
 import { LANES_TOP, carriedOut, lanesHeight, notationAt, barNumbers, tabHeight, type BarNotation, type System } from '#shared/engraving'
 import type { Score } from '#shared/score/types'
 import { isDrawnFrom, redrawBar, type DrawnBar } from './bar'
+import { isSameSystem } from './changes'
 import { drawFrame } from './frame'
 import { drawLanes, type LaneLine } from './lanes'
 import { drawCrossingLinks } from './links'
@@ -23,6 +24,11 @@ const BELOW = 22
 /** The tab stands at least this far below the staff's top line. */
 const TAB_TOP = 104
 const TAB_GAP = 34
+
+/** Bar numbers and repeats stand as they stood. */
+const isSameFrame = (before: Score, after: Score, { bars }: System): boolean =>
+  before === after || (before.head.strings.length === after.head.strings.length && bars.every(({ index }) =>
+    barNumbers(before)[index] === barNumbers(after)[index] && before.bars[index]?.repeatEnd === after.bars[index]?.repeatEnd))
 
 function setTransform(node: SVGElement, x: number, y: number): void {
   const transform = `translate(${at(x)} ${at(y)})`
@@ -56,10 +62,11 @@ export class SystemView {
 
   /** Takes other bars, or other widths. Draws when it has been drawn. */
   setSystem(system: System, score: Score): void {
+    const isSame = isSameSystem(this.system, system) && isSameFrame(this.score, score, system)
     this.system = system
     this.score = score
-    this.place()
-    if (this.isDrawn) this.draw(score)
+    if (!isSame) this.place()
+    if (this.isDrawn) this.draw(score, isSame)
   }
 
   /** Sets the heights that the notes ask for. */
@@ -90,10 +97,10 @@ export class SystemView {
   }
 
   /** Draws everything that is not drawn yet. */
-  draw(score: Score): void {
+  draw(score: Score, keepFrame = false): void {
     this.score = score
     this.isDrawn = true
-    this.drawFrame()
+    if (!keepFrame) this.drawFrame()
     const kept = new Set(this.system.bars.map((_, position) => this.barAt(position).group))
     for (const node of [...this.barLayer.children]) if (!kept.has(node as SVGGElement)) node.remove()
     this.drawLinks()
