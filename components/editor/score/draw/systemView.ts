@@ -1,4 +1,4 @@
-import { LANES_TOP, carriedOut, lanesHeight, notationAt, barNumbers, tabHeight, type BarNotation, type System } from '#shared/engraving'
+import { LANES_TOP, barPlaces, carriedOut, lanesHeight, notationAt, tabHeight, type BarNotation, type System } from '#shared/engraving'
 import type { Score } from '#shared/score/types'
 import { isDrawnFrom, redrawBar, type DrawnBar } from './bar'
 import { isSameSystem } from './changes'
@@ -28,7 +28,7 @@ const TAB_GAP = 34
 /** Bar numbers and repeats stand as they stood. */
 const isSameFrame = (before: Score, after: Score, { bars }: System): boolean =>
   before === after || (before.head.strings.length === after.head.strings.length && bars.every(({ index }) =>
-    barNumbers(before)[index] === barNumbers(after)[index] && before.bars[index]?.repeatEnd === after.bars[index]?.repeatEnd))
+    barPlaces(before)[index]?.number === barPlaces(after)[index]?.number && before.bars[index]?.repeatEnd === after.bars[index]?.repeatEnd))
 
 function setTransform(node: SVGElement, x: number, y: number): void {
   const transform = `translate(${at(x)} ${at(y)})`
@@ -141,10 +141,10 @@ export class SystemView {
   }
 
   private drawFrame(): void {
-    const numbers = barNumbers(this.score)
+    const places = barPlaces(this.score)
     const strings = this.score.head.strings.length
     const frame = drawFrame(this.system, { strings, tabTop: this.tabTop },
-      this.system.bars.map(bar => numbers[bar.index]!), this.system.bars.map(bar => this.score.bars[bar.index]!.repeatEnd))
+      this.system.bars.map(bar => places[bar.index]!.number), this.system.bars.map(bar => this.score.bars[bar.index]!.repeatEnd))
     this.frame.replaceWith(frame)
     this.frame = frame
   }
