@@ -98,7 +98,10 @@ export function createSaver(options: SaverOptions): Saver {
   function keepQueue(): Promise<unknown> {
     const [head, transactions] = [queue, unwritten]
     unwritten = []
-    return keep(() => store.append(head, transactions))
+    return keep(async () => {
+      await store.append(head, transactions)
+      if (hindrance?.kind === 'refused') await store.putHead(head, { reason: hindrance.reason, at: clock.now(), copy: await options.copy() })
+    })
   }
 
   function schedule(ms: number): void {
@@ -175,12 +178,9 @@ export function createSaver(options: SaverOptions): Saver {
       case 'trouble':
         hindrance = { kind: 'trouble', reason: failure.reason }
         return schedule(Math.max(wait, failure.after ?? 0))
-      case 'refused': {
-        const [head, at] = [queue, clock.now()]
-        void keep(async () => await store.putHead(head, { reason: failure.reason, at, copy: await options.copy() }))
-      }
     }
     hindrance = failure
+    void keepQueue()
   }
 
   function retry(): Promise<void> {
