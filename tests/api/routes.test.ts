@@ -68,7 +68,7 @@ describe('mail', () => {
     expect(message.from?.text).toBe('"Copperwound" <desk@copperwound.example>')
     expect(message.subject).toBe('Confirm your address')
     expect(message.bcc).toBeUndefined()
-    const link = /http:\/\/copperwound\.example\/confirm\?token=([\w-]+)/.exec(message.text ?? '')
+    const link = /http:\/\/copperwound\.example\/confirm#token=([\w-]+)/.exec(message.text ?? '')
     expect(message.html).toContain(`href="${link![0]}"`)
     expect(message.html, 'a name can’t bring markup in').not.toContain('<b>"Bold"')
     expect(message.html).toContain('&lt;b&gt;')

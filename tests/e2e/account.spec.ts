@@ -12,7 +12,7 @@ async function fillIn(page: Page, fields: Record<string, string>): Promise<void>
 
 /** Reads the newest message to this address in the local mailbox and follows its link. */
 async function followMail(page: Page, email: string, subject: RegExp): Promise<void> {
-  const link = page.getByRole('article').getByRole('link', { name: /\?token=/ })
+  const link = page.getByRole('article').getByRole('link', { name: /#token=/ })
   // Mail is written after the answer was given.
   await expect(async () => {
     await visit(page, '/outbox')

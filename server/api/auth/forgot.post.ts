@@ -20,7 +20,7 @@ export default defineApi(async (event) => {
   later('Sending a link for a new password', async () => {
     const db = await database()
     const user = await userByEmail(db, email)
-    if (user) await post(email, resetLetter(user.name, `${config().appUrl}/reset?token=${await makeToken(db, user.id, 'reset')}`))
+    if (user) await post(email, resetLetter(user.name, `${config().appUrl}/reset#token=${await makeToken(db, user.id, 'reset')}`))
   })
   setResponseStatus(event, 202)
   return {}

@@ -20,7 +20,7 @@ export default defineApi(async (event) => {
   later('Registering', async () => {
     const db = await database()
     const made = await register(db, { name, email, passwordHash })
-    if (made) return post(email, confirmLetter(name, `${config().appUrl}/confirm?token=${made.token}`))
+    if (made) return post(email, confirmLetter(name, `${config().appUrl}/confirm#token=${made.token}`))
     return post(email, knownLetter((await userByEmail(db, email))?.name ?? name, `${config().appUrl}/forgot`))
   })
   setResponseStatus(event, 202)
