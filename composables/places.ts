@@ -1,7 +1,11 @@
 /** Pages that anyone may see; all others ask for signing in. */
 const OPEN: readonly string[] = ['/', '/sign-in', '/register', '/confirm', '/forgot', '/reset', '/help', '/outbox']
 
-export const isOpenPage = (path: string): boolean => OPEN.includes(path.length > 1 ? path.replace(/\/+$/, '') : path)
+/** Every tuning has a page, open as well. */
+const OPEN_UNDER = '/tunings/'
+
+export const isOpenPage = (path: string): boolean =>
+  `${path}/`.startsWith(OPEN_UNDER) || OPEN.includes(path.length > 1 ? path.replace(/\/+$/, '') : path)
 
 /**
  * Where to go after signing in: a path of ours, or the folio. Anything that a browser could read as another site

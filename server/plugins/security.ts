@@ -23,7 +23,8 @@ const FIXED = {
   'Referrer-Policy': 'same-origin',
   'Cross-Origin-Opener-Policy': 'same-origin',
   'Cross-Origin-Resource-Policy': 'same-origin',
-  'Permissions-Policy': 'camera=(), geolocation=(), microphone=(), payment=()',
+  // The tuner listens; nobody else may.
+  'Permissions-Policy': 'camera=(), geolocation=(), microphone=(self), payment=()',
 }
 
 const nonceOf = (event: H3Event): string => ((event.context as { nonce?: string }).nonce ??= randomBytes(16).toString('base64'))
