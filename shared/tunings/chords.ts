@@ -69,6 +69,10 @@ function noteAt(place: number): string {
   return shownNote('FCGDAEB'[kept + 1 - 7 * alter]! + (alter < 0 ? 'b'.repeat(-alter) : '#'.repeat(alter)))
 }
 
+/** A note as its degree of the key: "F♯". */
+export const noteInKey = (chroma: number, key: Key): string =>
+  noteAt(placeAbove(key.fifths + (key.mode === 'minor' ? 3 : 0), chroma - tonicOf(key)))
+
 /** Root as a degree of the key, bass as a degree above the root: "C♯", "G♯". */
 function lettersOf({ root, bass }: Reading, key: Key): { root: string, bass: string } {
   const place = placeAbove(key.fifths + (key.mode === 'minor' ? 3 : 0), root - tonicOf(key))
