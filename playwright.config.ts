@@ -24,7 +24,7 @@ export default defineConfig({
     },
   },
   webServer: {
-    command: 'node .output/server/index.mjs',
+    command: `node ${process.env.COPPERWOUND_OUTPUT ?? '.output'}/server/index.mjs`,
     url: `${baseURL}/api/ready`,
     timeout: 60_000,
     reuseExistingServer: false,
