@@ -2,7 +2,7 @@ import { mount } from '@vue/test-utils'
 import { describe, expect, it } from 'vitest'
 import { createScore } from '../../../shared/score/create'
 import type { Head } from '../../../shared/score/types'
-import NeckView from '../../../components/editor/neck/NeckView.vue'
+import NeckView from '../../../components/neck/NeckView.vue'
 import { fretDistance } from '../../../shared/tunings/neck'
 
 const head = (pitches: string, more: Partial<Head> = {}): Head =>
