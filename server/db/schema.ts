@@ -71,6 +71,19 @@ export const members = pgTable('members', {
   addedAt: moment('added_at').notNull().defaultNow(),
 }, table => [primaryKey({ columns: [table.arrangementId, table.userId] }), index('members_user').on(table.userId)])
 
+/** Tunings that people keep for themselves. What they sound like tells which arrangements are in them. */
+export const tunings = pgTable('tunings', {
+  id: id(),
+  ownerId: uuid('owner_id').notNull().references(() => users.id, { onDelete: 'cascade' }),
+  name: text('name').notNull(),
+  notes: text('notes').notNull(),
+  strings: jsonb('strings').notNull(),
+  createdAt: created(),
+  changedAt: moment('changed_at').notNull().defaultNow(),
+  /** Kept, so that deleting can be undone. */
+  deletedAt: moment('deleted_at'),
+}, table => [index('tunings_owner').on(table.ownerId)])
+
 /** The log: every save is one revision. Rows are added, never changed. */
 export const revisions = pgTable('revisions', {
   arrangementId: uuid('arrangement_id').notNull().references(() => arrangements.id, { onDelete: 'cascade' }),

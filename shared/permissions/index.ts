@@ -21,6 +21,8 @@ const platform = {
   'account.password': ['member', 'admin'],
   'arrangement.list': ['member', 'admin'],
   'arrangement.create': ['member', 'admin'],
+  /** One's own: to list, save, change and delete them. */
+  'tuning.keep': ['member', 'admin'],
   'outbox.read': ['operator', 'admin'],
   'service.ready': ['visitor', 'member', 'admin'],
 } as const satisfies Record<string, readonly PlatformRole[]>

@@ -12,8 +12,10 @@ import { editsSince, rename, saveEdits, type Save } from '../../server/utils/edi
 import { finishLater } from '../../server/utils/later'
 import { SNAPSHOT_EVERY } from '../../server/utils/scores'
 import { makeToken, useToken } from '../../server/utils/tokens'
+import { createTuning, deleteTuning, listTunings, patchTuning, restoreTuning, tuningNames } from '../../server/utils/tunings'
 import { applyEdits, isRefused, type Edit } from '../../shared/edits'
-import type { Score } from '../../shared/score/types'
+import { OWN_TUNINGS } from '../../shared/schemas/tuning'
+import type { OpenString, Score } from '../../shared/score/types'
 import { hasPostgres, memoryDatabase, migrations, startPostgres, type Postgres } from '../support/database'
 import { parseScore } from '../support/score'
 
@@ -26,6 +28,9 @@ if (!hasPostgres) console.warn('Skipped: the same tests on a PostgreSQL server, 
 
 const piece = parseScore('3/0q 3/2q 2/1q 2/3q | 1/0w | 1/3h 1/0h', { title: 'Two herons' })
 const quarter = (id: string, fret: number) => ({ id, length: { base: 4, dots: 0 } as const, notes: [{ id: `${id}n`, string: 2, fret }] })
+
+/** String 1 first. */
+const strung = (pitches: string): OpenString[] => pitches.split(' ').map(pitch => ({ pitch }))
 
 /** An edit that fits `score`: the lower voice of its second bar gets one quarter. */
 const lower = (score: Score, fret: number): Edit => ({
@@ -239,6 +244,62 @@ describe.each(databases)('on $name', ({ there, open }) => {
         await saveEdits(db(), save(copy, 1, 0, [lower(piece, 2)]))
         expect((await readArrangement(db(), id)).score).toEqual(piece)
         expect(await roleIn(db(), author, copy)).toBeNull()
+      })
+    })
+
+    describe('tunings of one’s own', () => {
+      const low = strung('D4 B3 G3 D3 G2 D2')
+
+      it('are kept with name and notes, listed by name, changed and taken back', async () => {
+        const owner = await person()
+        const second = (await createTuning(db(), owner, { name: 'weir', strings: low }))!
+        const first = (await createTuning(db(), owner, { name: 'Reed bed', notes: 'For the slow airs.', strings: strung('D4 A3 F#3 D3 A2 D2') }))!
+        expect((await listTunings(db(), owner)).map(({ name, notes, strings }) => [name, notes, strings.length])).toEqual([['Reed bed', 'For the slow airs.', 6], ['weir', '', 6]])
+        const [before] = await listTunings(db(), owner)
+        expect(await patchTuning(db(), owner, first, { notes: '' })).toBe(true)
+        const [after] = await listTunings(db(), owner)
+        expect(after).toMatchObject({ id: first, name: 'Reed bed', notes: '', strings: before!.strings })
+        expect(Date.parse(after!.changedAt)).toBeGreaterThanOrEqual(Date.parse(before!.changedAt))
+        expect(await deleteTuning(db(), owner, first)).toBe(true)
+        expect((await listTunings(db(), owner)).map(each => each.id)).toEqual([second])
+        expect(await patchTuning(db(), owner, first, { name: 'gone' }), 'a deleted one can’t be changed').toBe(false)
+        expect(await restoreTuning(db(), owner, first)).toBe('restored')
+        expect(await restoreTuning(db(), owner, first), 'bringing it back twice is once').toBe('restored')
+        expect((await listTunings(db(), owner))[0]).toEqual(after)
+      })
+
+      it('are nobody else’s to see or change', async () => {
+        const owner = await person()
+        const id = (await createTuning(db(), owner, { name: 'Mine', strings: low }))!
+        expect(await listTunings(db(), other)).toEqual([])
+        expect([await patchTuning(db(), other, id, { name: 'Theirs' }), await deleteTuning(db(), other, id), await restoreTuning(db(), other, id)]).toEqual([false, false, 'absent'])
+        expect([await patchTuning(db(), owner, 'nonsense', { name: 'x' }), await restoreTuning(db(), owner, 'nonsense')]).toEqual([false, 'absent'])
+        expect((await listTunings(db(), owner))[0]).toMatchObject({ id, name: 'Mine' })
+      })
+
+      it('have an upper limit, also when two come at once and when one comes back', async () => {
+        const owner = await person()
+        for (let index = 0; index < OWN_TUNINGS.most - 1; index++) await createTuning(db(), owner, { name: `Tuning ${index}`, strings: low })
+        const [kept] = await listTunings(db(), owner)
+        const both = await Promise.all([createTuning(db(), owner, { name: 'One', strings: low }), createTuning(db(), owner, { name: 'Other', strings: low })])
+        expect(both.filter(id => id === null)).toHaveLength(1)
+        await deleteTuning(db(), owner, kept!.id)
+        expect(await createTuning(db(), owner, { name: 'In its place', strings: low })).not.toBeNull()
+        expect(await restoreTuning(db(), owner, kept!.id)).toBe('full')
+        expect(await listTunings(db(), owner)).toHaveLength(OWN_TUNINGS.most)
+      })
+
+      it('are shown with an arrangement that is in them, however they are spelled, and with no other', async () => {
+        const [arranger, performer] = [await person(), await person()]
+        const id = await createArrangement(db(), arranger, { ...piece, head: { ...piece.head, strings: strung('D4 A3 Gb3 D3 A2 D2') } })
+        await db().insert(members).values({ arrangementId: id, userId: performer, role: 'performer' })
+        expect(await tuningNames(db(), id)).toEqual([])
+        const tuning = (await createTuning(db(), arranger, { name: 'Reed bed', notes: 'Third string up last.', strings: strung('D4 A3 F#3 D3 A2 D2') }))!
+        await createTuning(db(), arranger, { name: 'Another', strings: low })
+        await createTuning(db(), performer, { name: 'A reader’s own name', strings: strung('D4 A3 F#3 D3 A2 D2') })
+        expect(await tuningNames(db(), id)).toEqual([{ name: 'Reed bed', notes: 'Third string up last.', by: 'P' }])
+        await deleteTuning(db(), arranger, tuning)
+        expect(await tuningNames(db(), id)).toEqual([])
       })
     })
 

@@ -12,6 +12,7 @@ vi.setConfig({ testTimeout: 90_000, hookTimeout: 120_000 })
  */
 interface Route { readonly body?: object, readonly visitor: number, readonly stranger: number, readonly arranger: number }
 const edits = { clientId: 'walk', seq: 1, base: 0, transactions: [{ label: 'Rename', edits: [{ kind: 'patchHead', before: { title: 'Low Water' }, after: { title: 'High Water' } }] }] }
+const tuning = { name: 'Walked', strings: ['D4', 'A3', 'F#3', 'D3', 'A2', 'D2'].map(pitch => ({ pitch })) }
 const token = 'a-token-that-is-none-at-all-123456'
 const open = (body: object | undefined, status: number): Route => ({ body, visitor: status, stranger: status, arranger: status })
 
@@ -33,6 +34,12 @@ const routes: Readonly<Record<string, Route>> = {
   'POST arrangements/[id]/duplicate': { visitor: 401, stranger: 404, arranger: 201 },
   'DELETE arrangements/[id]': { visitor: 401, stranger: 404, arranger: 204 },
   'POST arrangements/[id]/restore': { visitor: 401, stranger: 404, arranger: 200 },
+  'GET arrangements/[id]/tuning-names': { visitor: 401, stranger: 404, arranger: 200 },
+  'GET tunings': { visitor: 401, stranger: 200, arranger: 200 },
+  'POST tunings': { body: tuning, visitor: 401, stranger: 201, arranger: 201 },
+  'PATCH tunings/[id]': { body: { notes: 'For the slow airs.' }, visitor: 401, stranger: 404, arranger: 200 },
+  'DELETE tunings/[id]': { visitor: 401, stranger: 404, arranger: 204 },
+  'POST tunings/[id]/restore': { visitor: 401, stranger: 404, arranger: 200 },
   'POST auth/sign-out': open(undefined, 204),
 }
 
@@ -46,6 +53,7 @@ let mail: MailServer
 let stranger: Client
 let arranger: Client
 let id: string
+let tuningId: string
 
 beforeAll(async () => {
   mail = await startMailServer(4413)
@@ -53,6 +61,7 @@ beforeAll(async () => {
   arranger = await demoClient(server.url, 'maren.holt')
   const { body: { items } } = await arranger.send('GET', '/api/arrangements')
   id = items.find((each: { title: string }) => each.title === 'Low Water').id
+  tuningId = (await arranger.send('POST', '/api/tunings', tuning)).body.id
   stranger = createClient(server.url)
 })
 afterAll(async () => {
@@ -95,21 +104,22 @@ it('every route is in the table, and nothing else is', () => {
 
 describe.each(Object.entries(routes))('%s', (name, { body, ...expected }) => {
   const [method, path] = name.split(' ')
-  const address = (known: string) => `/api/${path!.replace('[id]', known)}${name === 'GET arrangements/[id]/edits' ? '?since=0' : ''}`
+  const known = () => (path!.startsWith('tunings') ? tuningId : id)
+  const address = (of: string) => `/api/${path!.replace('[id]', of)}${name === 'GET arrangements/[id]/edits' ? '?since=0' : ''}`
 
   it.each(['visitor', 'stranger', 'arranger'] as const)('as %s', async (who) => {
     // Signing out ends the session: on copies of nothing but a visitor's.
     const client = who === 'visitor' || path === 'auth/sign-out' ? createClient(server.url) : who === 'stranger' ? stranger : arranger
-    const answer = await client.send(method!, address(id), body)
+    const answer = await client.send(method!, address(known()), body)
     expect(answer.status).toBe(expected[who])
     if (answer.status >= 400) expect(answer.body.data).toMatchObject({ code: expect.stringMatching(/^[a-z-]+$/), message: expect.stringMatching(/\.$/) })
   })
 
   if (path!.includes('[id]')) {
-    it('answers for a strange arrangement as for one that is not there', async () => {
+    it('answers for what is another’s as for one that is not there', async () => {
       const absent = await stranger.send(method!, address('00000000-0000-4000-8000-000000000000'), body)
       const nonsense = await stranger.send(method!, address('nonsense'), body)
-      const strange = await stranger.send(method!, address(id), body)
+      const strange = await stranger.send(method!, address(known()), body)
       expect([absent.status, nonsense.status]).toEqual([404, 404])
       expect([absent.body.data, nonsense.body.data]).toEqual([strange.body.data, strange.body.data])
     })
