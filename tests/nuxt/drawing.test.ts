@@ -123,10 +123,12 @@ describe('the sheet', { timeout: 30_000 }, () => {
 
   beforeEach(() => {
     vi.useFakeTimers()
-    vi.stubGlobal('IntersectionObserver', class {
-      observe() {}
-      unobserve() {}
-      disconnect() {}
+    // Nothing is laid out here: systems stand one below the other in a window of 768 points.
+    vi.spyOn(Element.prototype, 'getBoundingClientRect').mockImplementation(function (this: Element) {
+      const above = [...this.parentElement?.children ?? []].filter(each => each.compareDocumentPosition(this) & Node.DOCUMENT_POSITION_FOLLOWING)
+      const height = (of: Element): number => Number.parseFloat((of as HTMLElement).style.height || '0')
+      const top = above.reduce((sum, each) => sum + height(each), 0)
+      return { top, bottom: top + height(this), left: 0, right: 900 } as DOMRect
     })
     root = document.createElement('div')
     sheet = new Sheet(root, vex, lanesOfBar)
@@ -136,7 +138,7 @@ describe('the sheet', { timeout: 30_000 }, () => {
   afterEach(() => {
     sheet.destroy()
     vi.useRealTimers()
-    vi.unstubAllGlobals()
+    vi.restoreAllMocks()
   })
 
   const show = (score: Score): void => sheet.show(score, openEditor(score).selection)
@@ -219,6 +221,7 @@ describe('the sheet', { timeout: 30_000 }, () => {
 
   it('draws a long piece only where it is looked at, and all of it for print', () => {
     show(denseScore(24))
+    vi.advanceTimersByTime(100)
     const drawn = barNodes().size
     expect(drawn).toBeGreaterThan(0)
     expect(drawn).toBeLessThan(24)

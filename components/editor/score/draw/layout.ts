@@ -15,7 +15,7 @@ export class Layout {
 
   /** The cell under a point of the window. @param voice whose events are meant where both voices stand */
   cellAtPoint(clientX: number, clientY: number, current: Cursor | null): Cursor | null {
-    const view = this.viewAtY(clientY)
+    const view = this.views[this.viewIndexAtY(clientY)]
     if (!view || !this.score) return null
     const { x, y } = view.local(clientX, clientY)
     const placed = view.system.bars.find(bar => x < bar.x + bar.width) ?? view.system.bars.at(-1)!
@@ -78,13 +78,14 @@ export class Layout {
     return low
   }
 
-  private viewAtY(clientY: number): SystemView | undefined {
+  /** Position of the first system that reaches below a height of the window. */
+  viewIndexAtY(clientY: number): number {
     let [low, high] = [0, this.views.length - 1]
     while (low < high) {
       const middle = (low + high) >> 1
-      if (this.views[middle]!.clientTop().bottom < clientY) low = middle + 1
+      if (this.views[middle]!.clientBox().bottom < clientY) low = middle + 1
       else high = middle
     }
-    return this.views[low]
+    return low
   }
 }

@@ -32,10 +32,13 @@ export class Sheet {
   private settling: ReturnType<typeof setTimeout> | undefined
   private ringing = 0
   private readonly pen: Pen
-  private readonly near = new IntersectionObserver(entries => this.seen(entries), { rootMargin: `${NEAR}px 0px` })
+  private looking = 0
 
   constructor(private readonly root: HTMLElement, vex: Vex, private lanesOf: LanesOf | null) {
     this.pen = createPen(vex)
+    // Whatever scrolls, the sheet may move with it. An observer of every system would cost each frame of a long piece.
+    document.addEventListener('scroll', this.lookLater, { capture: true, passive: true })
+    window.addEventListener('resize', this.lookLater)
   }
 
   /** Shows a score with its cursor; draws the bars that differ from the one shown before. */
@@ -81,7 +84,9 @@ export class Sheet {
     clearTimeout(this.settling)
     cancelAnimationFrame(this.ringing)
     this.layout.score = null
-    this.near.disconnect()
+    cancelAnimationFrame(this.looking)
+    document.removeEventListener('scroll', this.lookLater, { capture: true })
+    window.removeEventListener('resize', this.lookLater)
     this.root.replaceChildren()
   }
 
@@ -182,10 +187,11 @@ export class Sheet {
     })
     for (const id of this.layout.bars.keys()) if (!this.layout.indexOf.has(id)) this.layout.bars.delete(id)
     this.drawFirst(score)
+    this.lookLater()
     this.drawOverlay()
   }
 
-  /** What is in the window at first is drawn at once; the observer tells of the rest. */
+  /** What is in the window at first is drawn at once, before anyone knows where the window is. */
   private drawFirst(score: Score): void {
     let room = 900
     for (const view of this.layout.views) {
@@ -198,12 +204,10 @@ export class Sheet {
   private addView(system: System, score: Score): SystemView {
     const view = new SystemView(system, score, this.scale, { pen: this.pen, line: this.lineWidth, bars: this.layout.bars, lanesOf: this.lanesOf })
     this.root.append(view.element)
-    this.near.observe(view.element)
     return view
   }
 
   private dropView(view: SystemView): void {
-    this.near.unobserve(view.element)
     view.element.remove()
   }
 
@@ -212,9 +216,20 @@ export class Sheet {
     this.layout.bars.clear()
   }
 
-  private seen(entries: readonly IntersectionObserverEntry[]): void {
-    const arrived = new Set(entries.filter(entry => entry.isIntersecting).map(entry => entry.target))
-    for (const view of this.layout.views) if (arrived.has(view.element) && this.layout.score && !view.isDrawn) view.draw(this.layout.score)
+  private readonly lookLater = (): void => {
+    cancelAnimationFrame(this.looking)
+    this.looking = requestAnimationFrame(() => this.drawNear())
+  }
+
+  /** Draws the systems in and near the window. */
+  private drawNear(): void {
+    const { score, views } = this.layout
+    if (!score) return
+    for (let at = this.layout.viewIndexAtY(-NEAR); at < views.length; at++) {
+      const view = views[at]!
+      if (view.clientBox().top > window.innerHeight + NEAR) return
+      if (!view.isDrawn) view.draw(score)
+    }
   }
 
   private drawOverlay(): void {

@@ -90,10 +90,9 @@ export class SystemView {
     return { x: (clientX - box.left) / this.scale - LEFT, y: (clientY - box.top) / this.scale - this.top }
   }
 
-  /** Window rectangle of a stretch of the system, for scrolling. */
-  clientTop(): { top: number, bottom: number } {
-    const box = this.drawing.getBoundingClientRect()
-    return { top: box.top, bottom: box.bottom }
+  /** Where the system stands in the window. */
+  clientBox(): { readonly top: number, readonly bottom: number } {
+    return this.element.getBoundingClientRect()
   }
 
   /** Draws everything that is not drawn yet. */
