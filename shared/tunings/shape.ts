@@ -25,67 +25,104 @@ export interface Shape {
 }
 
 export const MOST_FINGERS = 4
-/** Weights (ours): each fretted note, finger and string left out; a barre; another bass than the root; position and span. */
-export const SHAPE_COST = { fretted: 1, finger: 0.8, muted: 1.5, mutedInside: 1.5, barre: 1, inversion: 2.5, missing: 1.5, position: 0.4, spanMm: 40, thin: 2 } as const
+/** Weights (ours): each fretted note, finger and string left out; a barre; another bass than the root; position and span;
+ * a third sounding three times. */
+export const SHAPE_COST = { fretted: 1, finger: 0.8, muted: 1.5, mutedInside: 1.5, barre: 1, inversion: 2.5, missing: 1.5, position: 0.4, spanMm: 40, thickThird: 2 } as const
 
 /** Millimetres between two frets counted from the nut. */
 export const spanOf = (board: Board, from: number, to: number): number => board.scaleLength * (fretDistance(to) - fretDistance(from))
 
-interface Held { readonly index: number, readonly fret: number }
+/** What one pass over a placement finds; the search makes thousands, so that it allocates little. */
+interface Survey {
+  readonly times: readonly number[]
+  readonly sounding: number
+  readonly inside: number
+  readonly bass: number
+  readonly held: number
+  readonly lowest: number
+  readonly highest: number
+  /** A barre's thickest and thinnest string as indexes, where one finger holds all at the lowest fret. */
+  readonly barre: readonly [low: number, high: number] | null
+  readonly fingers: number
+}
 
-/** Strings that a barre at the lowest fret can hold at once: no open string and nothing lower between its ends. */
-function barreOf(held: readonly Held[], frets: readonly (number | null)[]): { fret: number, low: number, high: number } | null {
-  const fret = Math.min(...held.map(each => each.fret))
-  const at = held.filter(each => each.fret === fret).map(each => each.index)
-  if (at.length < 2) return null
-  const [low, high] = [Math.min(...at), Math.max(...at)]
-  const between = frets.slice(low, high + 1)
-  return between.every(each => each === null || each >= fret) ? { fret, low, high } : null
+/** Null where a tone is foreign to the chord. */
+function survey(board: Board, tones: readonly number[], placed: readonly (number | null)[]): Survey | null {
+  const times = tones.map(() => 0)
+  let [sounding, bass, held, first, last] = [0, Infinity, 0, -1, -1]
+  let [lowest, highest, atLowest, low, high] = [Infinity, 0, 0, -1, -1]
+  for (let index = 0; index < placed.length; index += 1) {
+    const fret = placed[index]!
+    if (fret === null) continue
+    const midi = board.opens[index]! + fret - board.stops[index]!
+    const tone = tones.indexOf(chromaOf(midi))
+    if (tone < 0) return null
+    times[tone]! += 1
+    sounding += 1
+    if (first < 0) first = index
+    last = index
+    if (midi < bass) bass = midi
+    if (fret <= board.stops[index]!) continue
+    held += 1
+    if (fret > highest) highest = fret
+    if (fret < lowest) [lowest, atLowest, low] = [fret, 0, index]
+    if (fret === lowest) [atLowest, high] = [atLowest + 1, index]
+  }
+  const isBarre = atLowest > 1 && isClear(placed, low, high, lowest)
+  return {
+    times, sounding, inside: last - first + 1 - sounding, bass, held, lowest, highest,
+    barre: isBarre ? [low, high] : null, fingers: isBarre ? held - atLowest + 1 : held,
+  }
+}
+
+/** No open string, nor anything lower, between a barre's ends. */
+function isClear(placed: readonly (number | null)[], low: number, high: number, fret: number): boolean {
+  for (let index = low; index <= high; index += 1) {
+    const each = placed[index]!
+    if (each !== null && each < fret) return false
+  }
+  return true
 }
 
 /** Fingers in order of fret, then from the thickest string; those under a barre share the first. */
-function fingersOf(held: readonly Held[], barre: { fret: number, low: number, high: number } | null, strings: number): number[] {
-  const fingers = Array.from({ length: strings }, () => 0)
-  const isBarred = (each: Held) => barre !== null && each.fret === barre.fret
-  held.filter(isBarred).forEach(each => (fingers[each.index] = 1))
-  held.filter(each => !isBarred(each)).sort((a, b) => a.fret - b.fret || b.index - a.index)
-    .forEach((each, order) => (fingers[each.index] = order + (barre ? 2 : 1)))
-  return fingers
+function fingersOf(board: Board, placed: readonly (number | null)[], { barre, lowest }: Survey): number[] {
+  const held = placed.flatMap((fret, index) => (fret !== null && fret > board.stops[index]! ? [{ index, fret }] : []))
+  const isBarred = ({ fret }: { fret: number }) => barre !== null && fret === lowest
+  const order = held.filter(each => !isBarred(each)).sort((a, b) => a.fret - b.fret || b.index - a.index).map(each => each.index)
+  return placed.map((fret, index) => {
+    const at = order.indexOf(index)
+    return at >= 0 ? at + (barre ? 2 : 1) : fret !== null && fret > board.stops[index]! ? 1 : 0
+  })
+}
+
+function costOf(board: Board, chord: ChordWish, strings: number, found: Survey): number {
+  const { times, sounding, inside, bass, held, lowest, highest, barre, fingers } = found
+  const missing = times.filter(each => each === 0).length
+  return SHAPE_COST.fretted * held + SHAPE_COST.finger * fingers + (strings - sounding) * SHAPE_COST.muted + inside * SHAPE_COST.mutedInside
+    + (barre ? SHAPE_COST.barre : 0) + (chord.tones[0] === chromaOf(bass) ? 0 : SHAPE_COST.inversion) + missing * SHAPE_COST.missing
+    + (held ? spanOf(board, lowest, highest) / SHAPE_COST.spanMm + SHAPE_COST.position * (lowest - Math.min(...board.stops)) : 0)
+    + (times[1]! > 2 ? SHAPE_COST.thickThird : 0)
 }
 
 /**
  * Judges a placement.
  * @param placed frets from the nut, string 1 first; a string's own stop is open, null not played
+ * @param bar what a shape must cost less than to be wanted
  * @returns null where it is no shape of this chord: a tone is foreign or wanting, too few strings sound or five fingers are needed
  */
-export function judge(board: Board, chord: ChordWish, placed: readonly (number | null)[]): Shape | null {
-  const sounding = placed.flatMap((fret, index) => (fret === null ? [] : [{ index, fret, midi: board.opens[index]! + fret - board.stops[index]! }]))
-  if (sounding.length < Math.min(4, placed.length)) return null
-  const times = chord.tones.map(tone => sounding.filter(each => chromaOf(each.midi) === tone).length)
-  if (times.reduce((sum, each) => sum + each, 0) < sounding.length) return null
-  const missing = chord.tones.flatMap((_, index) => (times[index] ? [] : [index]))
-  if (missing.some(index => index !== 2 || chord.tones.length < 4)) return null
-
-  const held = sounding.filter(each => each.fret > board.stops[each.index]!)
-  const barre = barreOf(held, placed)
-  const needed = barre ? held.filter(each => each.fret > barre.fret).length + 1 : held.length
-  if (needed > MOST_FINGERS) return null
-
-  const places = held.map(each => each.fret)
-  const span = held.length ? spanOf(board, Math.min(...places), Math.max(...places)) : 0
-  const bass = sounding.reduce((low, each) => (each.midi < low.midi ? each : low))
-  const inversion = chord.tones.indexOf(chromaOf(bass.midi))
-  const indexes = sounding.map(each => each.index)
-  const inside = placed.filter((fret, index) => fret === null && index > Math.min(...indexes) && index < Math.max(...indexes)).length
-  const base = Math.min(...board.stops)
-  const cost = SHAPE_COST.fretted * held.length + SHAPE_COST.finger * needed + (placed.length - sounding.length) * SHAPE_COST.muted + inside * SHAPE_COST.mutedInside
-    + (barre ? SHAPE_COST.barre : 0) + (inversion ? SHAPE_COST.inversion : 0) + missing.length * SHAPE_COST.missing + span / SHAPE_COST.spanMm
-    + (held.length ? SHAPE_COST.position * (Math.min(...places) - base) : 0) + (times[1] && times[1] > 2 ? SHAPE_COST.thin : 0)
+export function judge(board: Board, chord: ChordWish, placed: readonly (number | null)[], bar = Infinity): Shape | null {
+  const found = survey(board, chord.tones, placed)
+  if (!found || found.sounding < Math.min(4, placed.length) || found.fingers > MOST_FINGERS) return null
+  if (found.times.some((each, index) => each === 0 && (index !== 2 || chord.tones.length < 4))) return null
+  const cost = costOf(board, chord, placed.length, found)
+  if (cost >= bar) return null
+  const { times, sounding, bass, held, lowest, highest, barre } = found
   return {
-    frets: placed.map((fret, index) => (fret === null ? null : fret - board.stops[index]!)), fingers: fingersOf(held, barre, placed.length),
-    barre: barre && { fret: barre.fret, fromString: barre.high + 1, toString: barre.low + 1 }, span, inversion,
+    frets: placed.map((fret, index) => (fret === null ? null : fret - board.stops[index]!)), fingers: fingersOf(board, placed, found),
+    barre: barre && { fret: lowest, fromString: barre[1] + 1, toString: barre[0] + 1 }, span: held ? spanOf(board, lowest, highest) : 0,
+    inversion: chord.tones.indexOf(chromaOf(bass)),
     doubled: chord.names.flatMap((name, index) => (times[index]! > 1 ? [{ name, times: times[index]! }] : [])),
-    missing: missing.map(index => chord.names[index]!), open: sounding.length - held.length, cost,
+    missing: chord.names.filter((_, index) => times[index] === 0), open: sounding - held, cost,
   }
 }
 

@@ -22,10 +22,12 @@ const NOT_PLAYED: Offer = { fret: null, tones: 0, above: 0, cost: SHAPE_COST.mut
 function offers(board: Board, index: number, tones: readonly number[], low: number, high: number): Offer[] {
   const stop = board.stops[index]!
   const toneAt = (fret: number) => tones.indexOf(chromaOf(board.opens[index]! + fret - stop))
-  const fretted = Array.from({ length: Math.max(0, high - low + 1) }, (_, step) => low + step)
-    .filter(fret => fret > stop && fret <= board.lastFret && toneAt(fret) >= 0)
-    .map((fret): Offer => ({ fret, tones: 1 << toneAt(fret), above: fret > low ? 1 : 0, cost: SHAPE_COST.fretted + (fret > low ? SHAPE_COST.finger : 0) }))
-  return [...(toneAt(stop) >= 0 ? [{ fret: stop, tones: 1 << toneAt(stop), above: 0 as const, cost: 0 }] : []), ...fretted, NOT_PLAYED]
+  const all: Offer[] = toneAt(stop) < 0 ? [] : [{ fret: stop, tones: 1 << toneAt(stop), above: 0, cost: 0 }]
+  for (let fret = Math.max(low, stop + 1); fret <= Math.min(high, board.lastFret); fret += 1) {
+    const tone = toneAt(fret)
+    if (tone >= 0) all.push({ fret, tones: 1 << tone, above: fret > low ? 1 : 0, cost: SHAPE_COST.fretted + (fret > low ? SHAPE_COST.finger : 0) })
+  }
+  return [...all, NOT_PLAYED]
 }
 
 /** The highest fret within reach of `low`. */
@@ -63,18 +65,27 @@ class Best {
 
 /** All placements whose lowest fretted place is `low` (0: none is fretted), from the thickest string on. */
 function searchWindow(board: Board, chord: ChordWish, low: number, high: number, best: Best): void {
+  const base = low ? SHAPE_COST.finger + SHAPE_COST.position * (low - Math.min(...board.stops)) : 0
+  if (base >= best.bar) return
   const choices = board.opens.map((_, index) => offers(board, index, chord.tones, low, high))
   const required = requiredOf(chord.tones)
   /** What string 1 to this one can still add, and must still cost at least. */
-  const within = choices.map((_, index) => choices.slice(0, index + 1).flat().reduce((bits, each) => bits | each.tones, 0))
-  const atLeast = choices.map((_, index) => choices.slice(0, index + 1).reduce((sum, each) => sum + Math.min(...each.map(({ cost }) => cost)), 0))
+  const within: number[] = []
+  const atLeast: number[] = []
+  for (const [index, own] of choices.entries()) {
+    let [tones, least] = [0, Infinity]
+    for (const each of own) [tones, least] = [tones | each.tones, Math.min(least, each.cost)]
+    within.push((within[index - 1] ?? 0) | tones)
+    atLeast.push((atLeast[index - 1] ?? 0) + least)
+  }
+  if (base + atLeast.at(-1)! >= best.bar) return
   const spanCost = Array.from({ length: Math.max(1, high - low + 1) }, (_, step) => spanOf(board, low, low + step) / SHAPE_COST.spanMm)
   const frets: (number | null)[] = board.opens.map(() => null)
 
   const down = (index: number, tones: number, above: number, top: number, atLow: boolean, cost: number): void => {
     if (above + (low ? 1 : 0) > MOST_FINGERS || cost + spanCost[top]! + (atLeast[index] ?? 0) >= best.bar) return
     if (index < 0) {
-      const shape = (tones & required) === required && (atLow || low === 0) ? judge(board, chord, frets) : null
+      const shape = (tones & required) === required && (atLow || low === 0) ? judge(board, chord, frets, best.bar) : null
       if (shape) best.add(shape)
       return
     }
@@ -86,8 +97,7 @@ function searchWindow(board: Board, chord: ChordWish, low: number, high: number,
     }
     frets[index] = null
   }
-  const base = Math.min(...board.stops)
-  down(board.opens.length - 1, 0, 0, 0, false, low ? SHAPE_COST.finger + SHAPE_COST.position * (low - base) : 0)
+  down(board.opens.length - 1, 0, 0, 0, false, base)
 }
 
 /**
