@@ -98,11 +98,14 @@ function createPlayer() {
   async function play(score: Score, where: Cursor | Selection | null, options: PlayOptions = {}): Promise<void> {
     rate.value = clampRate(options.rate ?? rate.value)
     if (options.click !== undefined) click.value = options.click
-    const what = scheduleOf(score, rangeOf(where))
+    await start(scheduleOf(score, rangeOf(where)), () => ({ rate: rate.value, click: click.value }))
+  }
+
+  async function start(what: Schedule, how: () => { rate: number, click: boolean }): Promise<void> {
     schedule.value = what
     const sound = await ready()
     if (schedule.value !== what) return
-    if (sound) sound.send({ kind: 'play', schedule: what, rate: rate.value, click: click.value })
+    if (sound) sound.send({ kind: 'play', schedule: what, ...how() })
     else finish()
   }
 
@@ -127,6 +130,8 @@ function createPlayer() {
     /** Sounds an event's notes together. */
     soundNotes: soundAll,
     play,
+    /** Plays tones that belong to no score, at their own pace. */
+    playTones: (tones: Schedule) => start(tones, () => ({ rate: 1, click: false })),
     stop,
     /** Loads what sound needs before it is asked for, so that the first note comes at once. Makes no sound and opens no device. */
     prepare: () => { void import('./sound/live') },

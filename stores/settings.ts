@@ -12,18 +12,21 @@ export interface Settings {
   readonly soundNotes: boolean
   /** A click on every beat while playing. */
   readonly click: boolean
+  /** Necks and chord diagrams are drawn the other way round. */
+  readonly leftHanded: boolean
 }
 
-export const DEFAULTS: Settings = { palette: 'system', soundNotes: true, click: false }
+export const DEFAULTS: Settings = { palette: 'system', soundNotes: true, click: false, leftHanded: false }
 
 /** Whatever was kept, made whole: unknown or damaged values fall back to the defaults one by one. */
 export function readSettings(kept: unknown): Settings {
   const found = typeof kept === 'object' && kept !== null ? kept as Partial<Record<keyof Settings, unknown>> : {}
-  const flag = (name: 'soundNotes' | 'click') => typeof found[name] === 'boolean' ? found[name] : DEFAULTS[name]
+  const flag = (name: 'soundNotes' | 'click' | 'leftHanded') => typeof found[name] === 'boolean' ? found[name] : DEFAULTS[name]
   return {
     palette: PALETTES.find(palette => palette === found.palette) ?? DEFAULTS.palette,
     soundNotes: flag('soundNotes'),
     click: flag('click'),
+    leftHanded: flag('leftHanded'),
   }
 }
 
@@ -31,12 +34,14 @@ export const useSettings = defineStore('settings', () => {
   const palette = ref<Palette>(DEFAULTS.palette)
   const soundNotes = ref(DEFAULTS.soundNotes)
   const click = ref(DEFAULTS.click)
-  const kept = computed<Settings>(() => ({ palette: palette.value, soundNotes: soundNotes.value, click: click.value }))
+  const leftHanded = ref(DEFAULTS.leftHanded)
+  const kept = computed<Settings>(() => ({ palette: palette.value, soundNotes: soundNotes.value, click: click.value, leftHanded: leftHanded.value }))
   function restore(from: unknown) {
     const settings = readSettings(from)
     palette.value = settings.palette
     soundNotes.value = settings.soundNotes
     click.value = settings.click
+    leftHanded.value = settings.leftHanded
   }
-  return { palette, soundNotes, click, kept, restore }
+  return { palette, soundNotes, click, leftHanded, kept, restore }
 })

@@ -11,6 +11,8 @@ export interface StringSet {
   readonly design: readonly OpenString[]
   /** Millimetres. */
   readonly scaleLength: number
+  /** Pounds on each string as the instrument is meant to be strung, where gauges of a set were exchanged for others; absent: those of its gauges. */
+  readonly designPounds?: readonly number[]
 }
 
 const plain = (inches: number): Gauge => ({ kind: 'plain', inches })
@@ -29,10 +31,15 @@ export const usualSet = (strings: readonly OpenString[]): StringSet | null =>
 
 /** Pounds on each string as the set is meant, string 1 first.
  * @throws RangeError when a gauge's weight is not known */
-export function designTensions(set: StringSet): number[] {
+export function designTensions(set: StringSet): readonly number[] {
+  if (set.designPounds) return set.designPounds
   return set.gauges.map((gauge, index) => {
     const pounds = tension(gauge, set.scaleLength, wholeLengthMidi(set.design[index]!))
     if (pounds === null) throw new RangeError(`no weight is known for a ${gauge.kind} string of ${gauge.inches} in`)
     return pounds
   })
 }
+
+/** The set with another gauge on one string (1 = first); what each string is meant to carry stays as it was. */
+export const withGauge = (set: StringSet, string: number, gauge: Gauge): StringSet =>
+  ({ ...set, name: 'Own gauges', gauges: set.gauges.map((each, index) => (index === string - 1 ? gauge : each)), designPounds: designTensions(set) })
