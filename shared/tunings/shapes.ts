@@ -103,7 +103,7 @@ function searchWindow(board: Board, chord: ChordWish, low: number, high: number,
 /**
  * The best shapes of a chord, by a search of all placements within a hand's reach: at most four fingers (a barre is one), every tone
  * sounding (only the fifth of a seventh chord may be left out), the root lowest where that is easy, open strings before fretted ones.
- * @returns at most `count`, best first; no two that differ only in strings left out
+ * @returns at most `count`, best first (the first is exactly the best); no two that differ only in strings left out
  */
 export function findShapes(board: Board, chord: ChordWish, wish: ShapeWish = USUAL_WISH): readonly Shape[] {
   const base = Math.min(...board.stops)
