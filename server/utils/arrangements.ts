@@ -66,5 +66,5 @@ export async function duplicateArrangement(db: Db, userId: string, arrangementId
   return createArrangement(db, userId, { ...score, head: { ...score.head, title: copyTitle(score.head.title) } })
 }
 
-/** Within what a title may hold. */
-const copyTitle = (title: string): string => `${title.slice(0, 190)} (copy)`
+/** Within what a title may hold; a cut never leaves half a surrogate pair, which the database refuses. */
+const copyTitle = (title: string): string => `${title.slice(0, 190).replace(/[\uD800-\uDBFF]$/, '')} (copy)`

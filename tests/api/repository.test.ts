@@ -245,6 +245,13 @@ describe.each(databases)('on $name', ({ there, open }) => {
         expect((await readArrangement(db(), id)).score).toEqual(piece)
         expect(await roleIn(db(), author, copy)).toBeNull()
       })
+
+      it('are duplicated whatever their title, which is cut between characters', async () => {
+        const title = `${'x'.repeat(189)}𝄞${'y'.repeat(9)}`
+        const id = await createArrangement(db(), author, { ...piece, head: { ...piece.head, title } })
+        const { score } = await readArrangement(db(), await duplicateArrangement(db(), author, id))
+        expect(score.head.title).toBe(`${'x'.repeat(189)} (copy)`)
+      })
     })
 
     describe('tunings of one’s own', () => {
