@@ -1,6 +1,7 @@
 import { randomBytes } from 'node:crypto'
-import { linkSync, readFileSync, renameSync, rmSync, statSync, utimesSync, writeFileSync } from 'node:fs'
+import { existsSync, linkSync, readFileSync, realpathSync, renameSync, rmSync, statSync, utimesSync, writeFileSync } from 'node:fs'
 import { hostname } from 'node:os'
+import { resolve } from 'node:path'
 
 /** The embedded database does not notice a second process on its folder; both would destroy it. This lock does. */
 
@@ -88,15 +89,19 @@ export class FolderInUse extends Error {
   }
 }
 
+/** One folder has one lock, by whatever way it is named. */
+const realPath = (dir: string): string => (existsSync(dir) ? realpathSync(dir) : resolve(dir))
+
 /**
  * Locks a data folder by a file beside it. A lock left by a killed process does not block.
  * @returns releases it
  * @throws FolderInUse when another living process holds it
  */
 export function lockFolder(dir: string): () => void {
-  const path = `${dir.replace(/\/+$/, '')}.lock`
+  const path = `${realPath(dir)}.lock`
   const mine = `${path}.${process.pid}.${randomBytes(4).toString('hex')}`
-  writeFileSync(mine, JSON.stringify({ pid: process.pid, started: startOf(process.pid), host: hostname() } satisfies Holder))
+  const holding = JSON.stringify({ pid: process.pid, started: startOf(process.pid), host: hostname() } satisfies Holder)
+  writeFileSync(mine, holding)
   try {
     for (let attempt = 0; !link(mine, path); attempt++) {
       const text = read(path)
@@ -113,7 +118,8 @@ export function lockFolder(dir: string): () => void {
   beat.unref()
   return () => {
     clearInterval(beat)
-    rmSync(path, { force: true })
+    // Whoever slept for long may have been taken for dead: another's lock stays.
+    if (read(path) === holding) rmSync(path, { force: true })
   }
 }
 
