@@ -1,7 +1,8 @@
-import { contextOf } from '../score/context'
+import { contextOf, type Context } from '../score/context'
 import { add, compare, divide, equals, fraction, subtract, toNumber, ZERO, type Fraction } from '../score/fraction'
+import { barPlaces } from '../score/numbers'
 import { capoOffset, soundingLabel } from '../score/sounding'
-import { beatOf, plainLength, surplus } from '../score/time'
+import { barLength, beatOf, meterLength, plainLength, surplus } from '../score/time'
 import { BASES, VOICE_NAMES, type Bar, type Head, type Key, type Length, type Meter, type Note, type Score, type ScoreEvent, type Voice, type VoiceName } from '../score/types'
 import { momentOf, placeOf } from './place'
 import type { EditorState } from './state'
@@ -17,13 +18,15 @@ export const lengthLabel = ({ base, dots }: Pick<Length, 'base' | 'dots'>): stri
 
 const article = (words: string): string => (/^[aeiou]/.test(words) ? `an ${words}` : `a ${words}`)
 
-/** A span in words: "an eighth", "a half note", "3 eighths", and where no note says it, "5/12 of a whole note". */
-export function spanLabel(span: Fraction): string {
+/** A span in words: "an eighth", "a half note", "3 eighths", and where no note says it, as inside tuplets, "1⅔ beats". */
+export function spanLabel(span: Fraction, meter: Meter): string {
   const plain = BASES.flatMap(base => [0, 1].map(dots => ({ base, dots }) as const))
     .find(length => equals(plainLength(length), span))
   if (plain) return article(lengthLabel(plain)) + (plain.base < 4 ? ' note' : '')
   const at = BASES.findIndex(base => base === span.d)
-  return at < 0 ? `${span.n}/${span.d} of a whole note` : `${span.n} ${LENGTH_NAMES[at]}${span.d < 4 ? ' note' : ''}s`
+  if (at >= 0) return `${span.n} ${LENGTH_NAMES[at]}${span.d < 4 ? ' note' : ''}s`
+  const beats = divide(span, beatOf(meter))
+  return `${mixedLabel(beats)} beat${compare(beats, fraction(1)) > 0 ? 's' : ''}`
 }
 
 /** How a voice fills its bar: "This bar is an eighth short"; null when it fits or nothing is in it. */
@@ -32,21 +35,36 @@ export function fillSentence(bar: Bar, name: VoiceName, meter: Meter): string | 
   const over = surplus(voice, bar, meter)
   if (!voice || compare(over, ZERO) === 0) return null
   return compare(over, ZERO) > 0
-    ? `This bar is over by ${spanLabel(over)}`
-    : `This bar is ${spanLabel(subtract(ZERO, over))} short`
+    ? `This bar is over by ${spanLabel(over, meter)}`
+    : `This bar is ${spanLabel(subtract(ZERO, over), meter)} short`
 }
 
 /** The beat a moment falls on, counted from 1, with the fraction of the beat that has passed: "2", "2½", "3⅓". */
-export function beatLabel(moment: Fraction, meter: Meter): string {
-  const beats = add(divide(moment, beatOf(meter)), fraction(1))
-  const whole = Math.floor(toNumber(beats))
-  const rest = subtract(beats, fraction(whole))
+export const beatLabel = (moment: Fraction, meter: Meter): string => mixedLabel(add(divide(moment, beatOf(meter)), fraction(1)))
+
+/** "2", "2½", "⅔", "1 + 2/9" */
+function mixedLabel(value: Fraction): string {
+  const whole = Math.floor(toNumber(value))
+  const rest = subtract(value, fraction(whole))
   if (rest.n === 0) return String(whole)
-  return `${whole}${VULGAR[`${rest.n}/${rest.d}`] ?? ` + ${rest.n}/${rest.d}`}`
+  const vulgar = VULGAR[`${rest.n}/${rest.d}`]
+  if (whole === 0) return vulgar ?? `${rest.n}/${rest.d}`
+  return `${whole}${vulgar ?? ` + ${rest.n}/${rest.d}`}`
 }
 const VULGAR: Readonly<Record<string, string>> = {
   '1/2': '½', '1/3': '⅓', '2/3': '⅔', '1/4': '¼', '3/4': '¾', '1/6': '⅙', '5/6': '⅚', '1/8': '⅛', '3/8': '⅜', '5/8': '⅝', '7/8': '⅞',
 }
+
+/** A bar by the number that is printed: "Bar 2"; what stands before bar 1 is the "Pickup".
+ * @param index position of the bar, from 0 */
+export function barLabel(score: Score, index: number): string {
+  const number = barPlaces(score)[index]?.number ?? index + 1
+  return number > 0 ? `Bar ${number}` : 'Pickup'
+}
+
+/** What is missing before the first beat of a bar, whose beats are counted from the end where it is a pickup. */
+const missingBefore = (score: Score, index: number, meter: Meter): Fraction =>
+  barPlaces(score)[index]?.pickup ? subtract(meterLength(meter), barLength(score.bars[index]!, meter)) : ZERO
 
 /** What a note says besides its fret, in the order in which it is read. */
 export function marksOf(note: Note): readonly string[] {
@@ -64,8 +82,8 @@ export function soundingFifths(key: Key, head: Head): number {
 
 /** Parts of the status line and of what a screen reader says. */
 export interface CursorDescription {
-  /** From 1. */
-  readonly bar: number
+  /** "Bar 2", as printed; "Pickup" */
+  readonly bar: string
   readonly bars: number
   readonly beat: string
   readonly string: number
@@ -89,9 +107,9 @@ export function describeCursor({ score, selection, entry }: EditorState): Cursor
   const { index, bar, context, voice, at, event, note } = placeOf(score, cursor)
   const fifths = soundingFifths(context.key, score.head)
   return {
-    bar: index + 1,
+    bar: barLabel(score, index),
     bars: score.bars.length,
-    beat: beatLabel(momentOf(voice, at), context.meter),
+    beat: beatLabel(add(missingBefore(score, index, context.meter), momentOf(voice, at)), context.meter),
     string: cursor.string,
     open: soundingLabel(score.head, { string: cursor.string, fret: 0 }, fifths),
     fret: note?.fret ?? null,
@@ -113,7 +131,7 @@ export function cursorSentence(state: EditorState): string {
     rest: `Rest, ${length}, string ${string}`,
     end: `End of the voice, string ${string}, ${open}, ${length} next`,
   }[at]
-  return [what, `Bar ${bar}, beat ${beat}, ${voice}`, fill].filter(Boolean).join('. ') + '.'
+  return [what, `${bar}, beat ${beat}, ${voice}`, fill].filter(Boolean).join('. ') + '.'
 }
 
 /** A bar read aloud, voice by voice: "Bar 2, 6/8. Upper voice: beat 1, eighth, string 2 fret 1, C4; …". Meter, key and repeats where they are stated.
@@ -131,15 +149,15 @@ export function readBar(score: Score, index: number): string {
     if (!voice) return []
     const label = VOICE_LABELS[name]
     const fill = fillSentence(bar, name, context.meter)
-    return [`${label[0]!.toUpperCase()}${label.slice(1)}: ${readVoice(voice, score.head, context.meter, context.key)}.${fill ? ` ${fill}.` : ''}`]
+    return [`${label[0]!.toUpperCase()}${label.slice(1)}: ${readVoice(voice, score.head, context, missingBefore(score, index, context.meter))}.${fill ? ` ${fill}.` : ''}`]
   })
-  return [`Bar ${[index + 1, ...stated].join(', ')}.`, ...(voices.length ? voices : ['Empty.'])].join(' ')
+  return [`${[barLabel(score, index), ...stated].join(', ')}.`, ...(voices.length ? voices : ['Empty.'])].join(' ')
 }
 
-function readVoice(voice: Voice, head: Head, meter: Meter, key: Key): string {
+function readVoice(voice: Voice, head: Head, { meter, key }: Context, before: Fraction): string {
   return voice.events.map((event, at) => {
     const tuplet = event.length.tuplets?.length ? ' in a tuplet' : ''
-    return `beat ${beatLabel(momentOf(voice, at), meter)}, ${lengthLabel(event.length)}${tuplet}, ${readNotes(event, head, key)}`
+    return `beat ${beatLabel(add(before, momentOf(voice, at)), meter)}, ${lengthLabel(event.length)}${tuplet}, ${readNotes(event, head, key)}`
   }).join('; ')
 }
 

@@ -3,7 +3,7 @@ import type { Key, Meter, Score } from '../score/types'
 import { engraveBar, isSameContext } from './bar'
 import { carriedOut } from './links'
 import { CLEF_WIDTH, KEY_ACCIDENTAL_WIDTH, METER_WIDTH, REPEAT_WIDTH } from './metrics'
-import { barPlaces } from './numbers'
+import { barPlaces } from '../score/numbers'
 import type { BarNotation } from './types'
 
 /** What stands before a bar's first note, and the lines at its ends. */

@@ -1,4 +1,4 @@
-import { lengthLabel } from '#shared/editor/describe'
+import { barLabel, lengthLabel } from '#shared/editor/describe'
 import type { Conflict } from '#shared/editor/rebase'
 import type { Score, Voice } from '#shared/score/types'
 
@@ -37,7 +37,7 @@ export function compareReadings(score: Score, conflict: Conflict): { readonly wh
   const strings = score.head.strings.length
   const bar = (id: string | null) => {
     const index = score.bars.findIndex(each => each.id === id)
-    return index < 0 ? 'a bar that is gone' : `bar ${index + 1}`
+    return index < 0 ? 'a bar that is gone' : barLabel(score, index).replace('Pickup', 'the pickup').toLowerCase()
   }
   const words = (title: string, text: string): Side => ({ title, tab: null, words: text })
   switch (conflict.kind) {

@@ -11,7 +11,7 @@ const OPEN_G = { strings: ['D4', 'B3', 'G3', 'D3', 'G2', 'D2'].map(pitch => ({ p
 describe('the cursor in words', () => {
   it('says where it is, what sounds there and how long it is written', () => {
     expect(describeCursor(parseState('{6/8} 3/0q 3/0e 3/0q 3/0e | 3/0e ^3/4q.', OPEN_G))).toEqual({
-      bar: 2, bars: 2, beat: '1⅓', string: 3, open: 'G3', fret: 4, pitch: 'B3', marks: [], voice: 'upper voice',
+      bar: 'Bar 2', bars: 2, beat: '1⅓', string: 3, open: 'G3', fret: 4, pitch: 'B3', marks: [], voice: 'upper voice',
       length: 'dotted quarter', at: 'note', fill: 'This bar is a quarter short',
     })
   })
@@ -24,6 +24,16 @@ describe('the cursor in words', () => {
     ['^3/0xhw', 'String 3, fret 0, dead note, hammer-on, whole. Bar 1, beat 1, upper voice.'],
     ['^3/12<lw', 'String 3, fret 12, G4, harmonic, partial 2, let ring, whole. Bar 1, beat 1, upper voice.'],
   ])('%s: %s', (text, sentence) => expect(cursorSentence(parseState(text))).toBe(sentence))
+
+  it('counts bars as they are printed: a pickup is none of them and is counted from its end (common practice)', () => {
+    const jig = (cursor: string) => `{6/8} {len=1/8} ${cursor === 'pickup' ? '^' : ''}3/0e | ${cursor === 'bar' ? '^' : ''}3/2h.`
+    expect(cursorSentence(parseState(jig('pickup')))).toBe('String 3, fret 0, G3, eighth. Pickup, beat 2⅔, upper voice.')
+    expect(cursorSentence(parseState(jig('bar')))).toBe('String 3, fret 2, A3, dotted half. Bar 1, beat 1, upper voice.')
+    expect(readBar(parseScore(jig('none')), 0)).toBe('Pickup, 6/8. Upper voice: beat 2⅔, eighth, string 3 fret 0, G3.')
+    // A strain that ends short and takes the rest with the next one's pickup: both are bar 2.
+    const strain = parseScore('{6/8} 3/0h. | {len=5/8} {:|} 3/0q. 3/0q | {len=1/8} 3/0e | 3/0h.')
+    expect([0, 1, 2, 3].map(index => readBar(strain, index).replace(/\. .*eat /, ' … ').replace(/, .*/, ''))).toEqual(['Bar 1', 'Bar 2', 'Bar 2 … 2⅔', 'Bar 3 … 1'])
+  })
 
   it('spells in the key, and with a capo in the key that sounds: fingered in G with a capo at 2 is A', () => {
     expect(describeCursor(parseState('{Eb} ^3/1q')).pitch).toBe('A♭3')
@@ -44,12 +54,13 @@ describe('over and under', () => {
   it.each([
     ['3/0w', null], ['', null], ['3/0h 3/0q 3/0e', 'This bar is an eighth short'], ['3/0w 3/0q', 'This bar is over by a quarter'],
     ['3/0h', 'This bar is a half note short'], ['3/0e', 'This bar is 7 eighths short'], ['3/0q 3/0s', 'This bar is 11 sixteenths short'],
-    ['3/0h. [3 3/0e]', 'This bar is 1/6 of a whole note short'], ['{len=1/8} 3/0e', null], ['{len=1/8} 3/0q', 'This bar is over by an eighth'],
+    ['3/0h. [3 3/0e]', 'This bar is ⅔ beat short'], ['{len=1/8} 3/0e', null], ['{len=1/8} 3/0q', 'This bar is over by an eighth'],
   ])('%s: %s', (text, sentence) => expect(fill(text)).toBe(sentence))
 
   it('names spans as written lengths where one says it', () => {
-    expect([fraction(1), fraction(3, 8), fraction(3, 16), fraction(1, 32), fraction(5, 4), fraction(5, 2)].map(spanLabel))
-      .toEqual(['a whole note', 'a dotted quarter', 'a dotted eighth', 'a thirty-second', '5 quarters', '5 half notes'])
+    expect([fraction(1), fraction(3, 8), fraction(3, 16), fraction(1, 32), fraction(5, 4), fraction(5, 2), fraction(5, 12), fraction(1, 20)]
+      .map(span => spanLabel(span, { beats: 4, unit: 4 })))
+      .toEqual(['a whole note', 'a dotted quarter', 'a dotted eighth', 'a thirty-second', '5 quarters', '5 half notes', '1⅔ beats', '1/5 beat'])
   })
 
   it('counts beats as players do', () => {

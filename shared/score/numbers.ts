@@ -1,7 +1,7 @@
-import { add, compare, equals, isLess, type Fraction } from '../score/fraction'
-import { contextsOf } from '../score/context'
-import { meterLength } from '../score/time'
-import type { Score } from '../score/types'
+import { add, compare, equals, isLess, type Fraction } from './fraction'
+import { contextsOf } from './context'
+import { meterLength } from './time'
+import type { Score } from './types'
 
 export interface BarPlace {
   /** As printed and spoken. A pickup is bar 0; the second half of a bar split by a repeat shares the number of the first (common practice). */
