@@ -49,6 +49,8 @@ export function rebase(base: Score, missed: readonly { readonly transactions: re
 
 class Rebasing {
   private readonly found = new Map<string, Conflict>()
+  /** What I had before the first edit of mine that did not fit, by the key of the conflict. */
+  private readonly known = new Map<string, unknown>()
   constructor(public score: Score, private readonly base: Score | undefined) {}
 
   get conflicts(): readonly Conflict[] {
@@ -59,8 +61,8 @@ class Rebasing {
   edit(edit: Edit): readonly Edit[] {
     switch (edit.kind) {
       case 'replaceVoice': return this.voice(edit)
-      case 'patchBar': return this.patchBar(edit)
-      case 'patchHead': return this.patchHead(edit)
+      case 'patchBar': return this.patch(edit, edit.bar, this.bar(edit.bar))
+      case 'patchHead': return this.patch(edit, null, this.score.head)
       case 'insertBars': return this.insert(edit)
       case 'removeBars': return edit.bars.flatMap(bar => this.remove(edit, bar))
       case 'moveBars': return this.move(edit)
@@ -82,33 +84,29 @@ class Rebasing {
     return this.score.bars[this.score.bars.findIndex(bar => bar.id === id) - 1]?.id ?? null
   }
 
+  /** Whether nothing is left to choose: mine has come to what they have, or back to where I began. */
+  private isOver(key: string, theirs: unknown, before: unknown, after: unknown): boolean {
+    if (!this.found.has(key)) this.known.set(key, before)
+    return isEqual(after, theirs) || isEqual(after, this.known.get(key))
+  }
+
   private voice(edit: ReplaceVoice): readonly Edit[] {
     const key = `${edit.bar} ${edit.voice}`
     const bar = this.bar(edit.bar)
     const theirs = bar?.voices[edit.voice] ?? null
     if (!this.found.has(key) && this.apply(edit)) return [edit]
-    if (bar && isEqual(theirs, edit.after)) this.found.delete(key)
+    if (this.isOver(key, bar ? theirs : undefined, edit.before, edit.after)) this.found.delete(key)
     else this.found.set(key, { kind: 'voice', bar: edit.bar, voice: edit.voice, mine: edit.after, theirs, ...(!bar && { gone: true as const }) })
     return []
   }
 
-  private patchBar(edit: PatchBar): readonly Edit[] {
-    const bar = this.bar(edit.bar)
-    const fields = this.freeFields(edit.bar, edit.before, edit.after, bar)
-    if (!fields.length) return []
-    return this.settle(fields.length === Object.keys(edit.after).length ? edit : { ...edit, before: pick(edit.before, fields), after: pick(edit.after, fields) }, edit.bar, bar)
-  }
-
-  private patchHead(edit: PatchHead): readonly Edit[] {
-    const fields = this.freeFields(null, edit.before, edit.after, this.score.head)
-    if (!fields.length) return []
-    return this.settle(fields.length === Object.keys(edit.after).length ? edit : { ...edit, before: pick(edit.before, fields), after: pick(edit.after, fields) }, null, this.score.head)
-  }
-
   /** A patch that no rule of music lets through on their score is a conflict in all its fields. */
-  private settle(edit: PatchBar | PatchHead, bar: string | null, holder: object | undefined): readonly Edit[] {
-    if (this.apply(edit)) return [edit]
-    for (const field of Object.keys(edit.after)) this.fieldConflict(bar, field, edit.after, holder)
+  private patch(edit: PatchBar | PatchHead, bar: string | null, holder: object | undefined): readonly Edit[] {
+    const fields = this.freeFields(bar, edit.before, edit.after, holder)
+    if (!fields.length) return []
+    const next = fields.length === Object.keys(edit.after).length ? edit : { ...edit, before: pick(edit.before, fields), after: pick(edit.after, fields) }
+    if (this.apply(next)) return [next]
+    for (const field of fields) this.fieldConflict(bar, field, edit.after, holder)
     return []
   }
 
@@ -118,7 +116,7 @@ class Rebasing {
       const key = `${bar ?? 'head'}.${field}`
       const theirs = valueOf(holder, field)
       if (holder && !this.found.has(key) && isEqual(theirs, valueOf(before, field))) return true
-      if (holder && isEqual(theirs, valueOf(after, field))) this.found.delete(key)
+      if (this.isOver(key, holder ? theirs : undefined, valueOf(before, field), valueOf(after, field))) this.found.delete(key)
       else this.fieldConflict(bar, field, after, holder)
       return false
     })

@@ -1,5 +1,5 @@
 import { applyEdits, isRefused, type Edit } from '../edits'
-import type { EditorState, HistoryEntry, Selection } from './state'
+import type { EditorState, History, HistoryEntry, Selection } from './state'
 
 /** What a command asks for: edits, and how the editor stands afterwards. Fields left out stay as they are. */
 export interface Transaction {
@@ -19,11 +19,15 @@ export interface Transaction {
   readonly history?: 'record' | 'merge' | 'undo' | 'redo' | 'skip'
 }
 
-/** Applies a transaction. Refused edits change nothing but the notice, which says why. Commands never sleep or read a clock: `time` in ms is given. */
+/**
+ * Applies a transaction. Refused edits change nothing but the notice, which says why; a step of history that is refused, since
+ * someone else changed its place, is let go, so that it does not stand before the others. Commands never sleep or read a clock:
+ * `time` in ms is given.
+ */
 export function applyTransaction(state: EditorState, transaction: Transaction, time: number): EditorState {
   const edits = transaction.edits ?? []
   const applied = applyEdits(state.score, edits)
-  if (isRefused(applied)) return { ...state, typed: null, notice: applied.refused.message }
+  if (isRefused(applied)) return { ...state, typed: null, ...refused(state.history, transaction, applied.refused.message) }
   return {
     score: edits.length ? applied.score : state.score,
     selection: transaction.selection ?? state.selection,
@@ -35,7 +39,13 @@ export function applyTransaction(state: EditorState, transaction: Transaction, t
   }
 }
 
-function remember(state: EditorState, transaction: Transaction, entry: HistoryEntry): EditorState['history'] {
+function refused(history: History, { history: kind }: Transaction, message: string): Pick<EditorState, 'history' | 'notice'> {
+  if (kind === 'undo') return { history: { ...history, undo: history.undo.slice(0, -1) }, notice: `${message} This step can’t be undone any more.` }
+  if (kind === 'redo') return { history: { ...history, redo: history.redo.slice(0, -1) }, notice: `${message} This step can’t be done again any more.` }
+  return { history, notice: message }
+}
+
+function remember(state: EditorState, transaction: Transaction, entry: HistoryEntry): History {
   const { undo, redo } = state.history
   const last = undo.at(-1)
   switch (transaction.history ?? 'record') {

@@ -31,8 +31,22 @@ describe('history', () => {
     // Undo of a field that someone else changed since is refused with a reason, not forced.
     const undone = applyTransaction(state, undoTransaction(state)!, 0)
     expect(undone.score.head.title).toBe('Theirs')
-    expect(undone.notice).toMatch(/changed meanwhile/)
-    expect(undone.history).toBe(state.history)
+    expect(undone.notice).toBe('The head of the arrangement has changed meanwhile. This step can’t be undone any more.')
+  })
+
+  it('gets past a step that someone else’s change has made impossible, both ways', () => {
+    const rung = applyTransaction(start, { label: 'Ring', edits: [{ kind: 'patchHead', before: { ring: 'written' }, after: { ring: 'let-ring' } }] }, 0)
+    const state = retitled(retitled(rung, 'One'), 'Theirs', 'skip')
+    const refused = applyTransaction(state, undoTransaction(state)!, 0)
+    const undone = applyTransaction(refused, undoTransaction(refused)!, 0)
+    expect(undone.score.head).toMatchObject({ title: 'Theirs', ring: 'written' })
+
+    const one = retitled(rung, 'One')
+    const back = [undoTransaction, undoTransaction].reduce((each, undo) => applyTransaction(each, undo(each)!, 0), one)
+    const taken = applyTransaction(back, { label: 'Theirs', edits: [{ kind: 'patchHead', before: { ring: 'written' }, after: { ring: 'let-ring' } }], history: 'skip' }, 0)
+    const stopped = applyTransaction(taken, redoTransaction(taken)!, 0)
+    expect(stopped.notice).toMatch(/can’t be done again any more/)
+    expect(applyTransaction(stopped, redoTransaction(stopped)!, 0).score.head.title).toBe('One')
   })
 
   it('drops what could be redone when something new is done', () => {

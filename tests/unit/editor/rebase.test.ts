@@ -153,6 +153,22 @@ describe('where both changed the same', () => {
     expect(transactions.map(each => each.label)).toEqual(['Enter fret 1'])
   })
 
+  it('what I took back myself is no question', () => {
+    const theirs = work(state('3/0q ^3/2q ; 6/0h | 3/4w | 3/5w'), ['fret.9'], 'a').sent
+    const undone = work(state('^3/0q 3/2q ; 6/0h | 3/4w | 3/5w'), ['fret.7', 'history.undo'], 'b').sent
+    expect(undone).toHaveLength(2)
+    const { score, conflicts, transactions } = rebase(base, [{ transactions: theirs }], undone)
+    expect(printScore(score)).toBe('3/0q 3/9q ; 6/0h | 3/4w | 3/5w')
+    expect([conflicts, transactions]).toEqual([[], []])
+
+    const again = work(state('^3/0q 3/2q ; 6/0h | 3/4w | 3/5w'), ['fret.7', 'history.undo', 'fret.5'], 'b').sent
+    expect(rebase(base, [{ transactions: theirs }], again).conflicts).toMatchObject([{ kind: 'voice', mine: { events: [{ notes: [{ fret: 5 }] }, {}] } }])
+
+    const called = (before: string, after: string): LoggedTransaction => ({ label: 'Title', edits: [{ kind: 'patchHead', before: { title: before }, after: { title: after } }] })
+    const { title } = base.head
+    expect(rebase(base, [{ transactions: [called(title, 'Theirs')] }], [called(title, 'Mine'), called('Mine', title)]).conflicts).toEqual([])
+  })
+
   it('a bar they took away: what I wrote there is handed back and can return', () => {
     const theirs = work(state('^3/0q 3/2q ; 6/0h | 3/4w | 3/5w'), ['bar.remove'], 'a').sent
     const { score, conflicts } = rebase(base, [{ transactions: theirs }], mine)
