@@ -32,6 +32,10 @@ const ABOVE_THE_WAY = 3
 /** A4 may be set so far, hertz: what ensembles have used since 1850 or so (common practice), baroque pitch apart. */
 export const A4 = { lowest: 430, usual: 440, highest: 450 } as const
 
+/** Whatever was typed or kept, as an A4 that can be used. */
+export const readA4 = (value: unknown): number =>
+  (typeof value === 'number' && value >= A4.lowest && value <= A4.highest ? value : A4.usual)
+
 /** "D2", "F♯3": the nearest note. */
 export const noteAt = (midi: number): string => pitchLabel(spell(midi, 0))
 
