@@ -4,7 +4,9 @@ import { existsSync, readFileSync, readdirSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { root, run, stop } from './run.mjs'
 
-const NOT_SOURCE = new Set(['node_modules', '.nuxt', '.output', '.data', '.git', '.ci', 'tests', 'docs', 'scripts', 'test-results', 'playwright-report', '.env'])
+/** What a build does not read, besides what begins with a dot: a log written beside the sources must not bring a build with every start. */
+const NOT_SOURCE = new Set(['node_modules', 'tests', 'docs', 'scripts', 'dist', 'coverage', 'test-results', 'playwright-report'])
+const isSource = name => !name.startsWith('.') && !NOT_SOURCE.has(name) && !/\.(md|log)$|^(playwright|vitest|eslint|drizzle)\./.test(name)
 
 /** Hash of the content of these files and folders, by path. */
 function fingerprint(paths) {
@@ -38,7 +40,8 @@ export function ensureDependencies() {
   const now = fingerprint(['package-lock.json'])
   if (!isStale(stamp, now)) return
   console.log('Installing what the lock file names (about a minute)…')
-  if (run('npm', ['ci', '--no-audit', '--no-fund']) !== 0) stop('npm ci failed; its messages above say why. Run the command again once that is mended.')
+  // What builds is among the development dependencies, which NODE_ENV=production would leave out.
+  if (run('npm', ['ci', '--include=dev', '--no-audit', '--no-fund']) !== 0) stop('npm ci failed; its messages above say why. Run the command again once that is mended.')
   writeFileSync(join(root, stamp), now)
 }
 
@@ -46,7 +49,7 @@ export function ensureDependencies() {
 export function ensureBuild() {
   const stamp = '.output/.copperwound-source'
   const sources = readdirSync(root, { withFileTypes: true })
-    .filter(entry => !NOT_SOURCE.has(entry.name) && !entry.name.endsWith('.md') && !/^(playwright|vitest|eslint|drizzle)\./.test(entry.name))
+    .filter(entry => isSource(entry.name))
     .map(entry => (entry.isDirectory() ? `${entry.name}/` : entry.name))
   const now = fingerprint(sources.sort())
   if (!isStale(stamp, now)) return

@@ -1,11 +1,10 @@
 // `npm start`: everything from a fresh clone to a running server. Only Node's own modules, since nothing may be installed yet.
-import { randomBytes } from 'node:crypto'
-import { accessSync, chmodSync, constants, existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs'
 import { createServer } from 'node:net'
-import { dirname, join, resolve } from 'node:path'
+import { join, resolve } from 'node:path'
 import { pathToFileURL } from 'node:url'
 import { ensureBuild, ensureDependencies } from './prepare.mjs'
 import { root, stop } from './run.mjs'
+import { sessionSecret } from './secret.mjs'
 
 const [major, minor] = process.versions.node.split('.').map(Number)
 if (major < 20 || (major === 20 && minor < 19)) stop(`Copperwound needs Node 20.19 or newer; this is ${process.versions.node}.`)
@@ -24,23 +23,8 @@ const checkPort = () => new Promise((done) => {
   probe.listen(port, host, () => probe.close(done))
 })
 
-/** The secret that seals session cookies: made once, kept readable for this user only. */
-function sessionSecret() {
-  const file = join(root, '.data', 'session-secret')
-  try {
-    mkdirSync(dirname(file), { recursive: true })
-    if (!existsSync(file)) writeFileSync(file, randomBytes(32).toString('base64url'), { mode: 0o600, flag: 'wx' })
-    chmodSync(file, 0o600)
-    accessSync(dirname(file), constants.W_OK)
-    return readFileSync(file, 'utf8').trim()
-  }
-  catch ({ code }) {
-    return stop(`The folder ${dirname(file)} can't be written (${code}). Give this user the right to write there.`)
-  }
-}
-
 await checkPort()
-const secret = process.env.NUXT_SESSION_PASSWORD || sessionSecret()
+const secret = process.env.NUXT_SESSION_PASSWORD || sessionSecret(join(root, '.data'))
 ensureDependencies()
 ensureBuild()
 Object.assign(process.env, {

@@ -50,6 +50,17 @@ function browser() {
   }))
 }
 
+/** Said last, whatever ends the run: one that ends before its checks has failed. */
+process.on('exit', (code) => {
+  rmSync(reports, { recursive: true, force: true })
+  console.log()
+  for (const row of rows) console.log(`${row.name.padEnd(10)} ${String(row.passed).padStart(5)} passed ${String(row.failed).padStart(3)} failed ${String(row.skipped).padStart(3)} skipped  ${row.seconds} s`)
+  const total = key => rows.reduce((sum, row) => sum + row[key], 0)
+  const failed = total('failed') || (code ? 1 : 0)
+  console.log(`tests: ${total('passed')} passed, ${failed} failed`)
+  process.exitCode = failed ? 1 : 0
+})
+
 ensureDependencies()
 ensureChromium()
 ensureBuild()
@@ -57,10 +68,3 @@ check('lint', 'npx', ['eslint', '.'])
 check('types', 'npx', ['nuxt', 'typecheck'])
 for (const project of ['unit', 'reference', 'nuxt', 'api']) vitest(project)
 browser()
-rmSync(reports, { recursive: true, force: true })
-
-console.log()
-for (const row of rows) console.log(`${row.name.padEnd(10)} ${String(row.passed).padStart(5)} passed ${String(row.failed).padStart(3)} failed ${String(row.skipped).padStart(3)} skipped  ${row.seconds} s`)
-const total = key => rows.reduce((sum, row) => sum + row[key], 0)
-console.log(`tests: ${total('passed')} passed, ${total('failed')} failed`)
-process.exitCode = total('failed') ? 1 : 0
