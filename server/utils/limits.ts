@@ -3,6 +3,7 @@ import { getRequestHeader, setResponseHeader, type H3Event } from 'h3'
 import { RateLimiterPostgres, RateLimiterRes } from 'rate-limiter-flexible'
 import { config } from './config'
 import { databaseHandle } from './database'
+import { placeOfAddress } from './place'
 import { problem } from './problems'
 
 /** Kept in the database, so that instances share them and a restart forgets none. Durations in seconds. */
@@ -37,7 +38,7 @@ const hashed = (key: string) => createHash('sha256').update(key).digest('base64u
 /** Where a request comes from, as far as that is known. */
 export function placeOf(event: H3Event): string {
   const forwarded = config().trustProxy ? getRequestHeader(event, 'x-forwarded-for')?.split(',').at(-1)?.trim() : undefined
-  return forwarded || event.node.req.socket?.remoteAddress || 'unknown'
+  return placeOfAddress(forwarded || event.node.req.socket?.remoteAddress || 'unknown')
 }
 
 /** Takes one point of each. @throws 429 with Retry-After when one is used up */
