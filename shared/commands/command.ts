@@ -10,9 +10,13 @@ export type Group = typeof GROUPS[number]
 
 export type Dialog = 'meter' | 'key' | 'tempo' | 'details' | 'tuning' | 'capo'
 
+/** A file that the desk hands out: MusicXML for other programs, or the saved form with everything in it. */
+export type ExportFile = 'musicxml' | 'saved'
+
 /** What only the view can do. `system` moves the cursor by a drawn system (−1 up, 1 down). */
 export type Intent
-  = | { readonly intent: 'play' | 'palette' | 'keys' | 'save' }
+  = | { readonly intent: 'play' | 'palette' | 'keys' | 'save' | 'print' }
+    | { readonly intent: 'export', readonly file: ExportFile }
     | { readonly intent: 'system', readonly by: -1 | 1, readonly extend: boolean }
     | { readonly intent: 'dialog', readonly dialog: Dialog }
 

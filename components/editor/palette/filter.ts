@@ -12,14 +12,17 @@ function fit(typed: string, word: string): number {
 }
 
 /** How well a command fits what was typed; 0 where a typed word fits nothing of it. */
-export function score(command: Pick<Command, 'title' | 'group'>, typed: string): number {
+export function score(command: Pick<Command, 'title' | 'group' | 'help'>, typed: string): number {
   const title = words(command.title)
   const all = [...title, ...words(command.group)]
+  const help = words(command.help ?? '')
   let total = 0
   for (const each of words(typed)) {
     const best = Math.max(0, ...all.map((word, index) => fit(each, word) * (index < title.length ? 2 : 1) + (index === 0 && word.startsWith(each) ? 1 : 0)))
-    if (!best) return 0
-    total += best
+    // What the help says counts least, and by the beginnings of its words only.
+    const found = best || (each.length > 2 && help.some(word => word.startsWith(each)) ? 1 : 0)
+    if (!found) return 0
+    total += found
   }
   return total
 }
