@@ -1,6 +1,7 @@
 import { and, desc, eq, isNotNull, isNull } from 'drizzle-orm'
 import type { ArrangementRole } from '#shared/permissions'
 import type { ArrangementDetail, ArrangementState, ArrangementSummary } from '#shared/schemas/arrangement'
+import { shortened } from '#shared/score/text'
 import type { Capo, OpenString, Score } from '#shared/score/types'
 import type { Db } from '../db/client'
 import { arrangements, members, snapshots } from '../db/schema'
@@ -66,5 +67,5 @@ export async function duplicateArrangement(db: Db, userId: string, arrangementId
   return createArrangement(db, userId, { ...score, head: { ...score.head, title: copyTitle(score.head.title) } })
 }
 
-/** Within what a title may hold; a cut never leaves half a surrogate pair, which the database refuses. */
-const copyTitle = (title: string): string => `${title.slice(0, 190).replace(/[\uD800-\uDBFF]$/, '')} (copy)`
+/** Within what a title may hold. */
+const copyTitle = (title: string): string => `${shortened(title, 190)} (copy)`

@@ -69,6 +69,12 @@ function migrated(saved: Record<string, unknown>, version: number): Record<strin
   return migrate ? migrated(migrate(saved), version + 1) : saved
 }
 
+/** What keeps a value from having the shape of a score, and where; null where nothing does. */
+export function shapeProblem(value: unknown): string | null {
+  const parsed = scoreSchema.safeParse(value)
+  return parsed.success ? null : problemOf(parsed.error)
+}
+
 function checkScore(value: unknown): ReadSaved {
   const parsed = scoreSchema.safeParse(value)
   if (!parsed.success) return { problem: problemOf(parsed.error) }

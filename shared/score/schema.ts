@@ -37,8 +37,11 @@ export const stringsSchema = z.array(openStringSchema).min(4).max(10)
 export const capoSchema: z.ZodType<Capo> = z.strictObject({ fret: whole(1, 35), strings: z.array(whole(1, 10)).min(1).max(10).optional() })
 export const caposSchema = z.array(capoSchema).max(4)
 
+/** Most characters of the head's texts. */
+export const TEXT_MOST = { title: 200, composer: 200, arranger: 200, rights: 1000, source: 1000 } as const
+
 const headFields = {
-  title: text(200), composer: text(200), arranger: text(200), rights: text(1000), source: text(1000),
+  title: text(TEXT_MOST.title), composer: text(TEXT_MOST.composer), arranger: text(TEXT_MOST.arranger), rights: text(TEXT_MOST.rights), source: text(TEXT_MOST.source),
   ring: ringSchema,
   instrument: z.strictObject({ scaleLength: z.number().min(300).max(1000), frets: whole(5, 36) }),
   strings: stringsSchema,

@@ -2,9 +2,11 @@ import { XmlElement } from '@rgrove/parse-xml'
 import { DEFAULT_KEY, DEFAULT_METER } from '../../score/context'
 import { ZERO, equals, fraction, isLess, toNumber, type Fraction } from '../../score/fraction'
 import { capoOffset } from '../../score/sounding'
+import { MOST_BARS } from '../../score/schema'
 import { meterLength } from '../../score/time'
 import { VOICE_NAMES, type Bar, type Head, type Key, type Meter, type RingRule, type Score, type Voices, type VoiceName } from '../../score/types'
 import { validateScore } from '../../score/validate'
+import { shapeProblem } from '../saved'
 import { raisedKey } from '../statement'
 import { isOwn, pitchRule, readHead, unstatedOf, type PitchRule } from './readHead'
 import { transposeOf } from './attributes'
@@ -17,8 +19,6 @@ import { FEATURE, TAB_VOICE_OFFSET, VOICE_NUMBERS } from './terms'
 import { all, one, parseTree, textAt } from './tree'
 
 export interface ReadMusicXml { readonly score: Score, readonly remarks: string[] }
-
-const MOST_BARS = 4000
 
 /**
  * Reads MusicXML: a tab staff with or without notation beside it (in the same part or another), else the first staff with
@@ -60,7 +60,7 @@ function readScore(root: XmlElement, newId: () => string): ReadMusicXml | { read
   const ownFile = isOwn(root)
   const rule = pitchRule(head, measures, sources.music.staff, ownFile ? createRemarks() : remarks)
   const score = { head, bars: readBars({ sources, head, rule, ownFile, unstated: unstatedOf(root), newId, remarks }) }
-  const problem = validateScore(score)
+  const problem = validateScore(score) ?? shapeProblem(score)
   if (problem) return { problem: `The file can’t be read as an arrangement: ${problem}` }
   // Only what is read is remarked upon bar by bar; other parts are named once, above.
   const ofParts = parts.filter(({ part }) => part === sources.music.part || part === sources.notation?.part).flatMap(each => each.remarks.list())

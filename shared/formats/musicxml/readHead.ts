@@ -1,7 +1,9 @@
 import type { XmlElement } from '@rgrove/parse-xml'
 import { STANDARD_TUNING, STEEL_STRING_GUITAR } from '../../score/create'
 import { pitchText } from '../../score/pitch'
+import { TEXT_MOST } from '../../score/schema'
 import { capoOffset, openMidi } from '../../score/sounding'
+import { shortened } from '../../score/text'
 import type { Capo, Head, OpenString } from '../../score/types'
 import { validateHead } from '../../score/validate'
 import type { RawStaff } from './attributes'
@@ -71,6 +73,20 @@ function exactSetup(setup: Setup, head: Head, fields: Readonly<Record<string, st
   return setup
 }
 
+function textsOf(root: XmlElement, remarks: Remarks): Pick<Head, keyof typeof TEXT_MOST> {
+  const fitted = (field: keyof typeof TEXT_MOST, text: string): string => {
+    const fits = shortened(text, TEXT_MOST[field])
+    if (fits !== text) remarks.say(`Shortened to ${TEXT_MOST[field]} characters: the ${field}.`)
+    return fits
+  }
+  return {
+    title: fitted('title', textAt(root, 'work', 'work-title') ?? textAt(root, 'movement-title') ?? ''),
+    composer: fitted('composer', creators(root, 'composer')), arranger: fitted('arranger', creators(root, 'arranger')),
+    rights: fitted('rights', all(one(root, 'identification'), 'rights').map(each => each.text).join('\n')),
+    source: fitted('source', textAt(root, 'identification', 'source') ?? ''),
+  }
+}
+
 export function readHead(root: XmlElement, tab: RawStaff | null, highestFret: number, remarks: Remarks): Head | { readonly problem: string } {
   const setup = setupOf(tab, remarks)
   if ('problem' in setup) return setup
@@ -81,10 +97,7 @@ export function readHead(root: XmlElement, tab: RawStaff | null, highestFret: nu
   const instrument = isStated ? { scaleLength, frets } : STEEL_STRING_GUITAR
   const capo = setup.capos[0]?.fret ?? 0
   const head: Head = {
-    title: textAt(root, 'work', 'work-title') ?? textAt(root, 'movement-title') ?? '',
-    composer: creators(root, 'composer'), arranger: creators(root, 'arranger'),
-    rights: all(one(root, 'identification'), 'rights').map(each => each.text).join('\n'),
-    source: textAt(root, 'identification', 'source') ?? '',
+    ...textsOf(root, remarks),
     ring: fields[FIELD.ring] === 'let-ring' ? 'let-ring' : 'written',
     instrument: { ...instrument, frets: isStated ? instrument.frets : Math.min(36, Math.max(instrument.frets, capo + highestFret)) },
     ...setup,

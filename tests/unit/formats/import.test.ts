@@ -40,6 +40,19 @@ describe('what can’t be read is said', () => {
     ['three strings', tab(note(4, '', '', place(1, 0))).replace(/<staff-tuning line="[456]">.*?<\/staff-tuning>/g, '').replace('<staff-lines>6', '<staff-lines>3'), /4 to 10 strings, not 3/],
   ])('%s', (_, text, message) => expect(problem(text)).toMatch(message))
 
+  it('more than an arrangement can hold', () => {
+    const bars = Array.from({ length: 2000 }, (_, index) => `<measure number="${index + 2}">${note(16)}</measure>`).join('')
+    expect(problem(tab(note(16), 4, bars))).toBe('The file has 2001 bars; an arrangement here has 2000 at most.')
+    expect(problem(tab(note(1).repeat(257), 64))).toMatch(/can’t be read as an arrangement: score\.bars\[0\]\.voices\.upper\.events/)
+  })
+
+  it('long texts, which are shortened', () => {
+    const title = `<work><work-title>${'x'.repeat(199)}𝄞</work-title></work><identification><rights>${'y'.repeat(1001)}</rights></identification><part-list>`
+    const { score, remarks } = read(tab(note(16)).replace('<part-list>', title))
+    expect([score.head.title, score.head.rights]).toEqual(['x'.repeat(199), 'y'.repeat(1000)])
+    expect(remarks).toEqual(['Shortened to 200 characters: the title.', 'Shortened to 1000 characters: the rights.'])
+  })
+
   it('absurd durations', () => {
     expect(problem(tab(note(1) + note(3), 9007199254740881))).toMatch(/can’t be computed/)
   })
