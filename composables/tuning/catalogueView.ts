@@ -71,12 +71,14 @@ export interface CatalogueFilter {
 export const ANY: CatalogueFilter = { search: '', instrument: '', changed: '', direction: '', chord: '', step: '', load: '' }
 
 const plain = (text: string): string => text.toLowerCase().replaceAll('♯', '#').replaceAll('♭', 'b')
-/** Letters with or without spaces find a tuning, as do its name, chord and change. */
+/** Two letters or more, as strings are said. */
+const LETTERS = /^[a-g][#b]?(\s+[a-g][#b]?)+$/
+/** Letters find the tunings that begin so, from the lowest string; other words those that have them all in name, letters, chord or change. */
 const isFound = (row: CatalogueRow, search: string): boolean => {
-  const words = plain(search).split(/\s+/).filter(Boolean)
-  const letters = plain(row.letters)
+  const [sought, letters] = [plain(search).trim().replace(/\s+/g, ' '), plain(row.letters)]
+  if (LETTERS.test(sought)) return `${letters} `.startsWith(`${sought} `)
   const all = plain(`${row.name} ${row.letters} ${letters.replaceAll(' ', '')} ${row.instrument} ${row.chord} ${row.change}`)
-  return letters.startsWith(words.join(' ')) || words.every(word => all.includes(word))
+  return sought.split(' ').every(word => all.includes(word))
 }
 
 const goes = (moves: readonly number[], direction: 'down' | 'up'): boolean =>
