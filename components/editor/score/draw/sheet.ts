@@ -130,14 +130,14 @@ export class Sheet {
       if (index > 0 && !bySystem.has(system)) bySystem.set(system, [])
     }
     for (const [system, positions] of bySystem) this.layout.views[system]!.redraw(score, positions)
-    this.ringOnLater(Math.max(...bySystem.keys()))
+    this.ringLater(Math.min(...bySystem.keys()), Math.max(...bySystem.keys()))
   }
 
-  /** What rings over from a changed bar into the systems that follow shows after the frame that shows the change. */
-  private ringOnLater(system: number): void {
+  /** How long the notes ring, here and over into the systems that follow, shows just after the frame that shows the change. */
+  private ringLater(first: number, last: number): void {
     cancelAnimationFrame(this.ringing)
     this.ringing = requestAnimationFrame(() => setTimeout(() => {
-      if (this.layout.score) for (const view of this.layout.views.slice(system + 1, system + 3)) view.drawLanes(this.layout.score)
+      if (this.layout.score) for (const view of this.layout.views.slice(first, last + 3)) view.drawLanes(this.layout.score)
     }))
   }
 

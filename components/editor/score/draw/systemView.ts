@@ -106,14 +106,13 @@ export class SystemView {
     this.drawLanes(score)
   }
 
-  /** Draws one bar anew where its notation changed; the others keep their nodes and widths. */
+  /** Draws bars anew where their notation changed; the others keep their nodes and widths. Lanes are drawn by `drawLanes`. */
   redraw(score: Score, positions: readonly number[]): void {
     this.score = score
     if (!this.isDrawn) return
     this.makeRoom(positions)
     for (const position of positions) this.barAt(position)
     this.drawLinks()
-    this.drawLanes(score)
   }
 
   /** Gives back what was drawn. */
