@@ -1,9 +1,9 @@
-import { useEventListener, useIntervalFn, useLocalStorage } from '@vueuse/core'
+import { useEventListener, useIntervalFn, useLocalStorage, useWakeLock } from '@vueuse/core'
 import { computed, onScopeDispose, readonly, ref, shallowRef, toValue, watch, type MaybeRefOrGetter } from 'vue'
 import { frequencyOf } from '#shared/score/pitch'
-import { A4, awaitPluck, detectPitch, follow, judge, levelOf, NOTHING_HEARD, readA4, windowFor, type Aim, type Followed, type Quiet } from '#shared/sound/tuner'
+import { A4, approachOf, awaitPluck, detectPitch, follow, FROM_ABOVE, judge, levelOf, NOTHING_HEARD, readA4, windowFor, type Aim, type Approach, type Followed, type Quiet, type Verdict } from '#shared/sound/tuner'
 import { NoMicrophone, openMicrophone, type Microphone, type MicrophoneProblem } from './tuner/microphone'
-import { startTone, type Tone } from './tuner/tone'
+import { useTone } from './tuner/useTone'
 
 /** off: not asked for yet, or switched off. lost: taken away. hidden: switched off because the page went out of sight. */
 export type TunerState = 'off' | 'asking' | 'listening' | 'lost' | 'hidden' | MicrophoneProblem
@@ -22,8 +22,6 @@ const MESSAGES: Readonly<Partial<Record<TunerState, { readonly title: string, re
 const EVERY = 50
 /** Seconds after its last sound for which a string counts as heard. */
 const FRESH = 0.5
-/** The tone goes on in the room for a moment after its end, milliseconds. */
-const TONE_FADES = 500
 
 const now = (): number => performance.now() / 1000
 
@@ -32,16 +30,15 @@ const now = (): number => performance.now() / 1000
 export function useTuner(aim: MaybeRefOrGetter<Omit<Aim, 'a4'>>) {
   const keptA4 = useLocalStorage<number>('copperwound-a4', A4.usual, { initOnMounted: true })
   const a4 = computed({ get: () => readA4(keptA4.value), set: value => void (keptA4.value = readA4(value)) })
-  const volume = useLocalStorage('copperwound-tone-volume', 0.5, { initOnMounted: true })
   const state = ref<TunerState>('off')
   const followed = shallowRef<Followed>(NOTHING_HEARD)
   const time = ref(0)
-  const isSounding = ref(false)
+  const approach = ref<Approach>(null)
+  const screen = useWakeLock()
   const target = computed(() => frequencyOf(toValue(aim).target, a4.value))
+  const tone = useTone(target, () => frequencyOf(toValue(aim).from ?? toValue(aim).target, a4.value))
 
   let microphone: Microphone | null = null
-  let tone: Tone | null = null
-  let quietFrom = 0
   let asked = 0
   /** After a change of string: the one before may ring on, at the very same pitch. */
   let quiet: Quiet | null = { floor: 0, isPlucked: true }
@@ -53,7 +50,7 @@ export function useTuner(aim: MaybeRefOrGetter<Omit<Aim, 'a4'>>) {
     time.value = now()
     if (!microphone) return
     // What the loudspeaker plays is in tune, whatever the string does: it must not be taken for it.
-    if (isSounding.value || performance.now() < quietFrom) return
+    if (tone.isInTheRoom()) return
     const { from, target: to } = toValue(aim)
     const size = windowFor(frequencyOf(Math.min(from ?? to, to) - 5, a4.value), microphone.rate)
     if (samples.length !== size) samples = new Float32Array(size)
@@ -61,12 +58,23 @@ export function useTuner(aim: MaybeRefOrGetter<Omit<Aim, 'a4'>>) {
     quiet = awaitPluck(quiet, levelOf(samples))
     if (!quiet.isPlucked) return
     followed.value = follow(followed.value, detectPitch(samples, microphone.rate, target.value), time.value)
+    const { pitch } = followed.value
+    if (pitch?.isSteady && pitch.time === time.value) approach.value = approachOf(approach.value, judged(pitch.hertz))
   }
+
+  const judged = (hertz: number): Verdict => judge(hertz, { ...toValue(aim), a4: a4.value })
+
+  const verdict = computed((): Verdict | null => {
+    const { pitch } = followed.value
+    const found = pitch && judged(pitch.hertz)
+    return found?.kind === 'in-tune' && approach.value === 'above' ? { ...found, advice: FROM_ABOVE } : found
+  })
 
   function close(to: TunerState): void {
     asked += 1
     looking.pause()
     microphone?.close()
+    void screen.release()
     microphone = null
     followed.value = NOTHING_HEARD
     state.value = to
@@ -83,38 +91,27 @@ export function useTuner(aim: MaybeRefOrGetter<Omit<Aim, 'a4'>>) {
       microphone = opened
       state.value = 'listening'
       looking.resume()
+      // A screen that goes dark would end the listening. Some devices refuse: then it is as before.
+      void screen.request('screen').catch(() => undefined)
     }
     catch (error) {
       if (question === asked) state.value = error instanceof NoMicrophone ? error.problem : 'failed'
     }
   }
 
-  function stopTone(): void {
-    tone?.stop()
-    tone = null
-    isSounding.value = false
-    quietFrom = performance.now() + TONE_FADES
-    followed.value = NOTHING_HEARD
-  }
-
-  function toggleTone(): void {
-    if (tone) return stopTone()
-    tone = startTone(target.value, volume.value)
-    isSounding.value = tone !== null
-    followed.value = NOTHING_HEARD
-  }
-
   function leave(to: TunerState): void {
     if (microphone || state.value === 'asking') close(to)
-    if (tone) stopTone()
+    tone.stop()
   }
 
   watch(() => [toValue(aim).string, toValue(aim).target].join(), () => {
     followed.value = NOTHING_HEARD
+    approach.value = null
     quiet = null
   })
-  watch(target, hertz => tone?.setHertz(hertz))
-  watch(volume, value => tone?.setVolume(value))
+  watch(tone.sounding, () => {
+    followed.value = NOTHING_HEARD
+  })
   if (import.meta.client) {
     useEventListener(window, 'pagehide', () => leave('off'))
     useEventListener(document, 'visibilitychange', () => void (document.hidden && state.value === 'listening' && leave('hidden')))
@@ -127,7 +124,9 @@ export function useTuner(aim: MaybeRefOrGetter<Omit<Aim, 'a4'>>) {
     listen,
     stop: () => leave('off'),
     /** Of what is heard, or was a moment ago; null: nothing yet. */
-    verdict: computed(() => followed.value.pitch && judge(followed.value.pitch.hertz, { ...toValue(aim), a4: a4.value })),
+    verdict,
+    /** Whether the string came down onto its pitch, from which it may slip. */
+    isFromAbove: computed(() => approach.value === 'above'),
     isSteady: computed(() => followed.value.pitch?.isSteady ?? false),
     /** Whether it sounds now. */
     isFresh: computed(() => followed.value.pitch !== null && time.value - followed.value.pitch.time < FRESH),
@@ -135,8 +134,6 @@ export function useTuner(aim: MaybeRefOrGetter<Omit<Aim, 'a4'>>) {
     target,
     /** Hertz, `A4.lowest` to `A4.highest`. */
     a4,
-    volume,
-    isSounding: readonly(isSounding),
-    toggleTone,
+    tone,
   }
 }

@@ -25,9 +25,13 @@ export interface Verdict {
 
 /** Cents that count as in tune (ours: the tuner is true to 2). */
 export const IN_TUNE = 3
-/** Half steps beyond the way from old to new pitch at which a string may still be met: slack, or gone past. */
-const BELOW_THE_WAY = 6
-const ABOVE_THE_WAY = 3
+/** Half steps beyond the way from old to new pitch at which a string may still be met. Less than a major third below: the next string
+ * is often a third or a fourth lower, and one must not tighten that. Farther where nobody says where the string was, above all upward, as
+ * loosening breaks nothing (ours). */
+const WAY = { below: 2.5, above: 3 } as const
+const UNKNOWN = { below: 3.5, above: 5.5 } as const
+/** Cents from which the wrong string is so near a danger that the advice names the string. */
+const NAMES_STRING = 150
 
 /** A4 may be set so far, hertz: what ensembles have used since 1850 or so (common practice), baroque pitch apart. */
 export const A4 = { lowest: 430, usual: 440, highest: 450 } as const
@@ -44,13 +48,14 @@ export const midiAt = (hertz: number, a4: number): number => 69 + 12 * Math.log2
 function other(hertz: number, { string, target, a4 }: Aim): Verdict {
   const midi = midiAt(hertz, a4)
   const cents = (midi - target) * 100
-  const isOctaveAbove = Math.abs(cents - 1200) < 40
-  return {
-    kind: 'other', cents, headline: `This is ${noteAt(midi)}`,
-    advice: isOctaveAbove
-      ? `An octave above ${noteAt(target)}: another string, or a harmonic. Pluck string ${string} alone, open, away from its middle. Turn nothing for this note.`
-      : `Too far from ${noteAt(target)} for string ${string}. Is another string sounding? Turn nothing for this note.`,
-  }
+  const wanted = noteAt(target)
+  return { kind: 'other', cents, headline: `This is ${noteAt(midi)}`, advice: `${reason(cents, wanted, string)} Turn nothing for this note.` }
+}
+
+function reason(cents: number, wanted: string, string: number): string {
+  if (Math.abs(cents - 1200) < 40) return `An octave above ${wanted}: another string, or a harmonic. Pluck string ${string} alone, open, away from its middle.`
+  if (cents < 0) return `Too far below ${wanted}: another string, or string ${string} is slack. Wind a slack one up until it comes near.`
+  return `Too far above ${wanted} for string ${string}. Is another string sounding?`
 }
 
 const size = (cents: number): string => {
@@ -62,13 +67,13 @@ const size = (cents: number): string => {
 export function judge(hertz: number, aim: Aim): Verdict {
   const midi = midiAt(hertz, aim.a4)
   const from = aim.from ?? aim.target
-  const [low, high] = [Math.min(from, aim.target) - BELOW_THE_WAY, Math.max(from, aim.target) + ABOVE_THE_WAY]
-  if (midi < low || midi > high) return other(hertz, aim)
+  const reach = aim.from === undefined ? UNKNOWN : WAY
+  if (midi < Math.min(from, aim.target) - reach.below || midi > Math.max(from, aim.target) + reach.above) return other(hertz, aim)
   const cents = centsBetween(hertz, frequencyOf(aim.target, aim.a4))
   if (Math.abs(cents) <= IN_TUNE) return { kind: 'in-tune', cents, headline: 'In tune', advice: 'Leave it so.' }
   const whole = Math.round(Math.abs(cents))
   const distance = `${whole} ${whole === 1 ? 'cent' : 'cents'}`
   return cents < 0
-    ? { kind: 'low', cents, headline: `Up ${distance}`, advice: `Too low. Tighten ${size(cents)}, slowly.` }
+    ? { kind: 'low', cents, headline: `Up ${distance}`, advice: `Too low. ${cents < -NAMES_STRING ? `If this is string ${aim.string}, tighten` : 'Tighten'} ${size(cents)}, slowly.` }
     : { kind: 'high', cents, headline: `Down ${distance}`, advice: `Too high. Loosen ${size(cents)}, go below, then come up.` }
 }

@@ -1,6 +1,6 @@
 import { Note } from 'tonal'
 import { describe, expect, it } from 'vitest'
-import { follow, judge, NOTHING_HEARD, singleStages, stagesOf, type Aim } from '../../../shared/sound/tuner'
+import { approachOf, follow, judge, NOTHING_HEARD, singleStages, stagesOf, type Aim } from '../../../shared/sound/tuner'
 
 const aim = (target: string, more: Partial<Aim> = {}): Aim => ({ string: 6, target: Note.midi(target)!, a4: 440, ...more })
 /** By the definition of the cent (A. Ellis, 1885): 1200 to an octave. */
@@ -17,6 +17,7 @@ describe('judge', () => {
 
   it('says how far in half steps, where cents are many', () => {
     expect(judge(Note.freq('E2')!, aim('D2')).advice).toBe('Too high. Loosen about two half steps, go below, then come up.')
+    expect(judge(Note.freq('C2')!, aim('D2')).advice).toBe('Too low. If this is string 6, tighten about two half steps, slowly.')
     expect(judge(Note.freq('D2')!, aim('Eb2')).advice).toBe('Too low. Tighten about one half step, slowly.')
     expect(judge(off('D2', -30), aim('D2')).advice).toBe('Too low. Tighten a little, slowly.')
   })
@@ -32,9 +33,33 @@ describe('judge', () => {
     expect(judge(Note.freq('D3')!, aim('D2')).advice).toContain('Turn nothing')
   })
 
+  it('has no lower neighbour tightened: strings a fourth or a major third apart, as in standard tuning', () => {
+    for (const [target, neighbour] of [['A2', 'E2'], ['D3', 'A2'], ['G3', 'D3'], ['B3', 'G3'], ['E4', 'B3']] as const) {
+      expect(judge(Note.freq(neighbour)!, aim(target)).kind).toBe('other')
+      expect(judge(Note.freq(neighbour)!, aim(target, { from: Note.midi(target)! - 1 })).advice).toContain('Turn nothing')
+    }
+  })
+
+  it('meets a string of standard tuning on its way to every lower pitch down to a fourth', () => {
+    for (const target of ['Eb2', 'D2', 'C#2', 'C2', 'B1']) expect(judge(Note.freq('E2')!, aim(target)).kind).toBe('high')
+  })
+
   it('knows the way from the old pitch to the new', () => {
-    expect(judge(Note.freq('G3')!, aim('D3')).kind).toBe('other')
-    expect(judge(Note.freq('G3')!, aim('D3', { from: Note.midi('G3')! })).kind).toBe('high')
+    expect(judge(Note.freq('A3')!, aim('D3')).kind).toBe('other')
+    expect(judge(Note.freq('A3')!, aim('D3', { from: Note.midi('A3')! })).kind).toBe('high')
+  })
+})
+
+describe('approach', () => {
+  const come = (...cents: number[]) => cents.reduce((before, each) => approachOf(before, judge(off('D2', each), aim('D2'))), null as ReturnType<typeof approachOf>)
+  it('tells a string let down onto its pitch from one drawn up to it', () => {
+    expect(come(200, 40, 1)).toBe('above')
+    expect(come(200, -20, 0)).toBe('below')
+    expect(come(-20, 60, 2)).toBe('above')
+  })
+  it('is not misled by a hard pluck, which starts a little sharp', () => {
+    expect(come(7, 4, 1)).toBeNull()
+    expect(come(-20, 8, 1)).toBe('below')
   })
 })
 
