@@ -1,9 +1,8 @@
 import { momentOf, placeOf, type EditorState } from '#shared/editor'
-import { raisedKey } from '#shared/formats/statement'
 import { lanesOfBar, type Lane } from '#shared/ring'
 import { compare } from '#shared/score/fraction'
 import { noteName, spell } from '#shared/score/pitch'
-import { capoOffset, fretFromNut, soundingMidi } from '#shared/score/sounding'
+import { capoOffset, fretFromNut, raisedKey, soundingMidi } from '#shared/score/sounding'
 import { VOICE_NAMES, type Note, type Score } from '#shared/score/types'
 import type { NeckPlace } from '#shared/tunings/neck'
 

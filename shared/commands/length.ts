@@ -1,5 +1,6 @@
 import type { Edit } from '../edits'
 import { placeOf, spansOf, type EditorState, type IdSource, type Transaction } from '../editor'
+import { lengthLabel } from '../editor/describe'
 import { compare, equals, fraction, sum, type Fraction } from '../score/fraction'
 import { plainLength } from '../score/time'
 import { BASES, type Base, type Length, type ScoreEvent, type Tuplet } from '../score/types'
@@ -12,12 +13,10 @@ type Entry = EditorState['entry']
 export function setLength(state: EditorState, entry: Entry): Transaction {
   const edits: readonly Edit[] = changeEvents(state, event =>
     event.length.base === entry.base && event.length.dots === entry.dots ? event : { ...event, length: { ...event.length, ...entry } })
-  return { label: `Length: ${lengthName(entry)}`, edits, entry }
+  return { label: `Length: ${lengthLabel(entry)}`, edits, entry }
 }
 
-const DOTTED = ['', 'dotted ', 'double dotted ', 'triple dotted ']
-const NAMES: Record<Base, string> = { 1: 'whole', 2: 'half', 4: 'quarter', 8: 'eighth', 16: 'sixteenth', 32: 'thirty-second', 64: 'sixty-fourth' }
-export const lengthName = (length: Entry): string => `${DOTTED[length.dots] ?? ''}${NAMES[length.base]}`
+const nameOf = (base: Base): string => lengthLabel({ base, dots: 0 })
 
 /** The length under the cursor, or at the end what is entered next: what a dot acts on. */
 function lengthHere(state: EditorState): Entry {
@@ -104,7 +103,7 @@ const LENGTHS: readonly { base: Base, keys: readonly string[], letter: string }[
 
 export const lengthCommands: readonly Command[] = [
   ...LENGTHS.map(({ base, keys, letter }) => scoreCommand({
-    id: `length.${NAMES[base]}`, title: `${NAMES[base][0]!.toUpperCase()}${NAMES[base].slice(1)} note`, group: 'Lengths', keys,
+    id: `length.${nameOf(base)}`, title: `${nameOf(base)[0]!.toUpperCase()}${nameOf(base).slice(1)} note`, group: 'Lengths', keys,
     help: 'For the event under the cursor or all that are selected, and for what is entered next.',
     run: state => setLength(state, { base, dots: 0 }),
     example: { before: '^3/0e. 3/2e', after: `^3/0${letter} 3/2e` },

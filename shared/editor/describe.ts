@@ -1,7 +1,8 @@
 import { contextOf, type Context } from '../score/context'
 import { add, compare, divide, equals, fraction, subtract, toNumber, ZERO, type Fraction } from '../score/fraction'
 import { barPlaces } from '../score/numbers'
-import { capoOffset, soundingLabel } from '../score/sounding'
+import { capoOffset, raisedKey, soundingLabel } from '../score/sounding'
+import { VULGAR } from '../score/text'
 import { barLength, beatOf, meterLength, plainLength, surplus } from '../score/time'
 import { BASES, VOICE_NAMES, type Bar, type Head, type Key, type Length, type Meter, type Note, type Score, type ScoreEvent, type Voice, type VoiceName } from '../score/types'
 import { momentOf, placeOf } from './place'
@@ -51,9 +52,6 @@ function mixedLabel(value: Fraction): string {
   if (whole === 0) return vulgar ?? `${rest.n}/${rest.d}`
   return `${whole}${vulgar ?? ` + ${rest.n}/${rest.d}`}`
 }
-const VULGAR: Readonly<Record<string, string>> = {
-  '1/2': '½', '1/3': '⅓', '2/3': '⅔', '1/4': '¼', '3/4': '¾', '1/6': '⅙', '5/6': '⅚', '1/8': '⅛', '3/8': '⅜', '5/8': '⅝', '7/8': '⅞',
-}
 
 /** A bar by the number that is printed: "Bar 2"; what stands before bar 1 is the "Pickup".
  * @param index position of the bar, from 0 */
@@ -74,11 +72,8 @@ export function marksOf(note: Note): readonly string[] {
   ].filter(text => typeof text === 'string')
 }
 
-/** The key that sounds where `key` is fingered: a full capo raises it by half steps, each seven steps on the line of fifths. */
-export function soundingFifths(key: Key, head: Head): number {
-  const capo = capoOffset(head)
-  return capo === 0 ? key.fifths : ((key.fifths + 7 * capo + 5) % 12 + 12) % 12 - 5
-}
+/** The key that sounds where `key` is fingered: a full capo raises it. */
+export const soundingFifths = (key: Key, head: Head): number => raisedKey(key, capoOffset(head)).fifths
 
 /** Parts of the status line and of what a screen reader says. */
 export interface CursorDescription {

@@ -29,8 +29,8 @@ export function applyEdits(score: Score, edits: readonly Edit[]): AppliedAll | {
     const result = applyEdit(current, edit)
     if (isRefused(result)) return result
     current = result.score
-    inverses.unshift(result.inverse)
+    inverses.push(result.inverse)
     for (const id of result.touched) touched.add(id)
   }
-  return { score: current, inverses, touched }
+  return { score: current, inverses: inverses.reverse(), touched }
 }

@@ -1,6 +1,6 @@
 import { fifthsOf, midiOfText, noteName, parsePitch, pitchLabel, STEPS } from '../score/pitch'
 import { STANDARD_TUNING } from '../score/create'
-import { capoOffset } from '../score/sounding'
+import { capoOffset, raisedKey } from '../score/sounding'
 import type { Capo, Head, Key, Score } from '../score/types'
 import { contextOf } from '../score/context'
 
@@ -36,12 +36,6 @@ export function keyName(key: Key): string {
   const alter = Math.floor((position + 1) / 7)
   const step = STEPS.find(each => fifthsOf({ step: each, alter }) === position) ?? 'C'
   return noteName({ step, alter }) + (key.mode === 'minor' ? ' minor' : '')
-}
-
-/** The key heard when a piece written in `key` is played `halfSteps` higher; of two spellings the one with fewer signs, six sharps before six flats. */
-export function raisedKey(key: Key, halfSteps: number): Key {
-  const fifths = ((key.fifths + 7 * halfSteps + 5) % 12 + 12) % 12 - 5
-  return halfSteps % 12 === 0 ? key : { ...key, fifths }
 }
 
 function stringList(strings: readonly number[]): string {

@@ -1,13 +1,8 @@
 import { divide, toNumber, type Fraction } from '../score/fraction'
+import { VULGAR } from '../score/text'
 import { beatOf } from '../score/time'
 import type { Meter } from '../score/types'
 import type { Ring } from './types'
-
-/** The fractions that Unicode has as one character (block Number Forms and Latin-1). */
-const VULGAR: Readonly<Record<string, string>> = {
-  '1/2': '½', '1/3': '⅓', '2/3': '⅔', '1/4': '¼', '3/4': '¾', '1/5': '⅕', '2/5': '⅖', '3/5': '⅗', '4/5': '⅘',
-  '1/6': '⅙', '5/6': '⅚', '1/7': '⅐', '1/8': '⅛', '3/8': '⅜', '5/8': '⅝', '7/8': '⅞', '1/9': '⅑', '1/10': '⅒',
-}
 
 /** "1½ beats", "¾ beat", "2 beats" of a span in whole notes; the beat is the one a player counts in the meter. */
 export function beatsText(span: Fraction, meter: Meter): string {

@@ -1,5 +1,5 @@
 import { midiOfText, pitchLabel, spell, type Spelling } from './pitch'
-import type { Head, Note } from './types'
+import type { Head, Key, Note } from './types'
 
 /** Law 1, in one place: sounding pitch = the string's open pitch + the capo that covers it + fret. */
 
@@ -26,6 +26,12 @@ export function openMidi(head: Strung, string: number): number {
 /** Half steps by which the written staff lies below the sound because of the capo: the largest full capo. */
 export const capoOffset = (head: Strung): number =>
   Math.max(0, ...head.capos.filter(capo => !capo.strings || capo.strings.length === head.strings.length).map(capo => capo.fret))
+
+/** The key heard when a piece written in `key` is played `halfSteps` higher; of two spellings the one with fewer signs, six sharps before six flats. */
+export function raisedKey(key: Key, halfSteps: number): Key {
+  const fifths = ((key.fifths + 7 * halfSteps + 5) % 12 + 12) % 12 - 5
+  return halfSteps % 12 === 0 ? key : { ...key, fifths }
+}
 
 /** Sounding pitch (MIDI number; for partials off the half step with decimals). */
 export function soundingMidi(head: Head, note: Pick<Note, 'string' | 'fret' | 'harmonic'>): number {

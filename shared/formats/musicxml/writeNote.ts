@@ -1,7 +1,6 @@
 import { midiOf, spell, type Spelling } from '../../score/pitch'
-import { capoOffset, soundingMidi, staffSpelling } from '../../score/sounding'
+import { capoOffset, raisedKey, soundingMidi, staffSpelling } from '../../score/sounding'
 import type { Head, Key, Note, ScoreEvent, Tuplet, Voice } from '../../score/types'
-import { raisedKey } from '../statement'
 import type { BeamValue } from './beams'
 import type { Links } from './links'
 import { PLAY, TYPE_NAMES } from './terms'

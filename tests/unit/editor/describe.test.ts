@@ -60,13 +60,13 @@ describe('over and under', () => {
   it('names spans as written lengths where one says it', () => {
     expect([fraction(1), fraction(3, 8), fraction(3, 16), fraction(1, 32), fraction(5, 4), fraction(5, 2), fraction(5, 12), fraction(1, 20)]
       .map(span => spanLabel(span, { beats: 4, unit: 4 })))
-      .toEqual(['a whole note', 'a dotted quarter', 'a dotted eighth', 'a thirty-second', '5 quarters', '5 half notes', '1⅔ beats', '1/5 beat'])
+      .toEqual(['a whole note', 'a dotted quarter', 'a dotted eighth', 'a thirty-second', '5 quarters', '5 half notes', '1⅔ beats', '⅕ beat'])
   })
 
   it('counts beats as players do', () => {
     const six = { beats: 6, unit: 8 } as const
     expect([fraction(0), fraction(3, 8), fraction(1, 8), fraction(5, 8)].map(moment => beatLabel(moment, six))).toEqual(['1', '2', '1⅓', '2⅔'])
-    expect([fraction(1, 8), fraction(7, 16), fraction(1, 20)].map(moment => beatLabel(moment, { beats: 4, unit: 4 }))).toEqual(['1½', '2¾', '1 + 1/5'])
+    expect([fraction(1, 8), fraction(7, 16), fraction(1, 20)].map(moment => beatLabel(moment, { beats: 4, unit: 4 }))).toEqual(['1½', '2¾', '1⅕'])
   })
 })
 

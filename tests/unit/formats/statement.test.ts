@@ -1,7 +1,8 @@
 import { describe, expect, it } from 'vitest'
 import { createScore } from '../../../shared/score/create'
 import type { Head } from '../../../shared/score/types'
-import { capoStatement, changedStrings, keyName, raisedKey, tuningStatement } from '../../../shared/formats/statement'
+import { capoStatement, changedStrings, keyName, tuningStatement } from '../../../shared/formats/statement'
+import { raisedKey } from '../../../shared/score/sounding'
 
 const head = (pitches: string, capos: Head['capos'] = []): Head => ({
   ...createScore({ title: 'Test' }, () => 'b').head, strings: pitches.split(' ').reverse().map(pitch => ({ pitch })), capos,
