@@ -11,7 +11,7 @@ export interface RetunedVoice { readonly bar: string, readonly voice: VoiceName,
  * Changes strings or capos together with the voices that are laid out anew, as one step to undo. Without voices frets stay and the
  * sound changes. Null where nothing changes; where it can't be done, a transaction with the reason as its notice.
  */
-export function retune({ score }: EditorState, wish: Partial<Pick<Head, 'strings' | 'capos'>>, voices: readonly RetunedVoice[] = []): Transaction | null {
+export function retune({ score }: Pick<EditorState, 'score'>, wish: Partial<Pick<Head, 'strings' | 'capos'>>, voices: readonly RetunedVoice[] = []): Transaction | null {
   const label = voices.length ? 'Change the tuning, keep the sound' : 'Change the tuning'
   const fields = (['strings', 'capos'] as const).filter(field => wish[field] && !isEqual(wish[field], score.head[field]))
   if (!fields.length) return null

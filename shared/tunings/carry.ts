@@ -1,5 +1,5 @@
 import { equals } from '../score/fraction'
-import { PARTIAL_AT_FRET, capoFret, isFretOnNeck, openMidi, soundingMidi } from '../score/sounding'
+import { PARTIAL_AT_FRET, capoFret, isFretOnNeck, openMidi } from '../score/sounding'
 import type { Head, Note, Score, ScoreEvent, Voice, VoiceName } from '../score/types'
 import { carryNotes, isTogether, lastOn, nextOn, type Bound, type CarryNotes, type Item, type Place } from './carryNotes'
 import { fretDistance } from './neck'
@@ -38,6 +38,8 @@ export interface Carried {
 interface Work {
   readonly before: Head
   readonly after: Head
+  /** Half steps from a string's open pitch in the new tuning up to another's in the old one. */
+  readonly rise: (from: number, to: number) => number
   readonly notes: CarryNotes
   readonly reach: number
   /** Where notes are by now; those that are not in it are where they were. */
@@ -52,7 +54,7 @@ const touchOf = (partial: number): number | null => {
 
 /** A harmonic's pitch is another string's too only where their open pitches are octaves apart. */
 function harmonicOn(work: Work, note: Note, partial: number, string: number): Place | null {
-  const wanted = partial * 2 ** ((openMidi(work.before, note.string) - openMidi(work.after, string)) / 12)
+  const wanted = partial * 2 ** (work.rise(string, note.string) / 12)
   const rounded = Math.round(wanted)
   if (Math.abs(wanted - rounded) > 1e-6 || rounded < 2 || rounded > 12) return null
   const fret = rounded === partial ? note.fret : touchOf(rounded)
@@ -63,7 +65,7 @@ function harmonicOn(work: Work, note: Note, partial: number, string: number): Pl
 function placeOn(work: Work, note: Note, string: number): Place | null {
   if (note.dead) return { string, fret: note.fret, ...(note.harmonic && { harmonic: note.harmonic }) }
   if (note.harmonic) return harmonicOn(work, note, note.harmonic.partial, string)
-  return { string, fret: soundingMidi(work.before, note) - openMidi(work.after, string) }
+  return { string, fret: note.fret + work.rise(string, note.string) }
 }
 
 const placeNow = (work: Work, item: Item): Place => work.places.get(item) ?? item.note
@@ -192,7 +194,10 @@ const wideBars = (work: Work): number[] => work.notes.bars.flatMap((items, index
  * @param reach millimetres that a hand opens (another hand has other limits)
  */
 export function carry(score: Score, wish: Pick<Head, 'strings' | 'capos'>, reach = 125): Carried {
-  const work: Work = { before: score.head, after: { ...score.head, ...wish }, notes: carryNotes(score), reach, places: new Map() }
+  const after: Head = { ...score.head, ...wish }
+  const [old, now] = [score.head, after].map(head => head.strings.map((_, index) => openMidi(head, index + 1)))
+  const rise = (from: number, to: number) => old![to - 1]! - now![from - 1]!
+  const work: Work = { before: score.head, after, rise, notes: carryNotes(score), reach, places: new Map() }
   const waiting = placeAll(work)
   const left = new Map(waiting.flatMap(bound => bound.filter(({ note }) => !note.dead)
     .map(item => [item, { bar: item.bar + 1, voice: item.voice, note: item.note, ...reasonFor(work, bound, item) }] as const)))

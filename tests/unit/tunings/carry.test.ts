@@ -135,7 +135,7 @@ function linkPairs(score: Score): string[] {
   let carriedIn: readonly CarriedLink[] = []
   return score.bars.flatMap((bar) => {
     const { links, out } = linksOf(bar, carriedIn)
-    const pairs = links.map(({ from, to, string, voice }) => `${from ?? carriedIn.find(each => each.string === string && each.voice === voice)?.note.id} > ${to}`)
+    const pairs = links.map(({ from, to, string, voice }) => `${from ?? carriedIn.find(each => each.note.string === string && each.voice === voice)?.note.id} > ${to}`)
     carriedIn = out
     return pairs
   }).sort()
