@@ -1,5 +1,6 @@
 import { contextsOf, type Context } from '../score/context'
-import type { Key, Meter, Score } from '../score/types'
+import { isEqual } from '../score/equal'
+import type { Key, Meter, Score, Tempo } from '../score/types'
 import { engraveBar, isSameContext } from './bar'
 import { carriedOut } from './links'
 import { CLEF_WIDTH, KEY_ACCIDENTAL_WIDTH, METER_WIDTH, REPEAT_WIDTH } from './metrics'
@@ -14,6 +15,8 @@ export interface Role {
   /** Signature that a change to none cancels; before other signatures naturals are not needed (Gould, "Key signatures"). */
   readonly cancels: number
   readonly meter: Meter | null
+  /** Stated here and not the one that held before. */
+  readonly tempo: Tempo | null
   readonly repeatStart: boolean
   readonly right: 'single' | 'double' | 'final' | 'repeat'
 }
@@ -55,6 +58,7 @@ export function roleAt(score: Score, index: number, opens: boolean): Role {
     key: opens || keyChanges ? here.key : null,
     cancels: keyChanges && here.key.fifths === 0 ? before.key.fifths : 0,
     meter: !before || !sameMeter(before.meter, here.meter) ? here.meter : null,
+    tempo: bar.tempo && !(before && isEqual(before.tempo, bar.tempo)) ? bar.tempo : null,
     repeatStart: !!bar.repeatStart,
     right: bar.repeatEnd ? 'repeat' : isLast ? 'final' : contexts[index + 1]!.key.fifths !== here.key.fifths ? 'double' : 'single',
   }
@@ -72,7 +76,7 @@ export function prefixWidth(role: Role): number {
 }
 
 const roleKeys = (role: Role): string =>
-  [role.opens, role.key?.fifths, role.cancels, role.meter && `${role.meter.beats}/${role.meter.unit}`, role.repeatStart, role.right].join(' ')
+  [role.opens, role.key?.fifths, role.cancels, role.meter && `${role.meter.beats}/${role.meter.unit}`, role.tempo && Object.values(role.tempo).join('-'), role.repeatStart, role.right].join(' ')
 export const isSameRole = (a: Role, b: Role): boolean => a === b || roleKeys(a) === roleKeys(b)
 
 /** How far a system may be pressed together, as a part of its wished width. */

@@ -17,6 +17,20 @@ describe('bar numbers (common practice)', () => {
   })
 })
 
+describe('what stands before a bar', () => {
+  it('shows a tempo where it begins to hold', () => {
+    const plain = parseScore('{4/4} 1/0w | 1/0w | 1/0w')
+    const tempo = { perMinute: 96, base: 4, dots: 1 } as const
+    const marks = (tempos: readonly (typeof tempo | undefined)[]) => {
+      const score = { ...plain, bars: plain.bars.map((bar, index) => ({ ...bar, ...(tempos[index] && { tempo: tempos[index] }) })) }
+      return score.bars.map((_, index) => roleAt(score, index, index === 0).tempo?.perMinute ?? null)
+    }
+    expect(marks([tempo])).toEqual([96, null, null])
+    expect(marks([tempo, tempo])).toEqual([96, null, null])
+    expect(marks([undefined, tempo])).toEqual([null, 96, null])
+  })
+})
+
 describe('line breaking', () => {
   const measure = (body: number) => ({ body, least: body * 0.6, inner: 0, opening: 40 })
 

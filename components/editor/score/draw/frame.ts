@@ -1,5 +1,5 @@
 import { CLEF_WIDTH, KEY_ACCIDENTAL_WIDTH, STAFF_HEIGHT, STRING_SPACE, cancelledCount, tabHeight, type PlacedBar, type System } from '#shared/engraving'
-import type { Key, Meter } from '#shared/score/types'
+import type { Key, Meter, Tempo } from '#shared/score/types'
 import { at, glyph, svg, words } from './svg'
 
 /** SMuFL code points. */
@@ -9,6 +9,9 @@ const NATURAL = 0xE261
 const SHARP = 0xE262
 const FLAT = 0xE260
 const DIGIT = 0xE080
+/** Notes of metronome marks, stems up, by their base. */
+const METRONOME: Readonly<Record<Tempo['base'], number>> = { 1: 0xECA2, 2: 0xECA3, 4: 0xECA5, 8: 0xECA7, 16: 0xECA9, 32: 0xECAB, 64: 0xECAD }
+const METRONOME_DOT = 0xECB7
 const BRACKET_TOP = 0xE003
 const BRACKET_BOTTOM = 0xE004
 
@@ -16,7 +19,8 @@ const BRACKET_BOTTOM = 0xE004
 const SHARPS = [8, 5, 9, 6, 3, 7, 4]
 const FLATS = [4, 7, 3, 6, 2, 5, 1]
 
-export interface FrameMeasures { readonly strings: number, readonly tabTop: number }
+/** `tempoAt`: y of the line on which metronome marks stand. */
+export interface FrameMeasures { readonly strings: number, readonly tabTop: number, readonly tempoAt: number }
 
 const y = (position: number): number => STAFF_HEIGHT - position * 5
 
@@ -33,6 +37,14 @@ function meterDigits(meter: Meter, x: number): Element[] {
     svg('text', { 'x': at(x), 'y': height!, 'font-family': 'Bravura', 'font-size': 40, 'text-anchor': 'middle' }, number(value!)))
 }
 
+/** "♩. = 80" */
+function tempoMark({ base, dots, perMinute }: Tempo, x: number, height: number): Element {
+  const note = String.fromCodePoint(METRONOME[base], ...Array.from({ length: dots }, () => METRONOME_DOT))
+  return svg('text', { x: at(x), y: at(height), class: 'tempo-mark' },
+    svg('tspan', { 'font-family': 'Bravura', 'font-size': 19 }, note),
+    svg('tspan', { 'font-family': 'Alegreya Sans', 'font-size': 14, 'dx': 4 }, `= ${perMinute}`))
+}
+
 function tabClef(strings: number, tabTop: number): Element {
   const code = strings <= 5 ? TAB_CLEF[4] : TAB_CLEF[6]
   const natural = (strings <= 5 ? 3 : 5) * 10
@@ -41,8 +53,9 @@ function tabClef(strings: number, tabTop: number): Element {
   return glyph(code, 11, tabTop + height / 2, at(40 * Math.min(1.15, height / natural)))
 }
 
-function prefix(bar: PlacedBar, { strings, tabTop }: FrameMeasures, number: number): Element[] {
+function prefix(bar: PlacedBar, measures: FrameMeasures, number: number): Element[] {
   const { role } = bar
+  const { strings, tabTop } = measures
   const parts: Element[] = []
   let x = bar.x
   if (role.opens) {
@@ -57,11 +70,12 @@ function prefix(bar: PlacedBar, { strings, tabTop }: FrameMeasures, number: numb
     parts.push(...signature(role.key, role.cancels, x))
     x += accidentals * KEY_ACCIDENTAL_WIDTH + 6
   }
+  if (role.tempo) parts.push(tempoMark(role.tempo, x + 4, measures.tempoAt))
   if (role.meter) {
     parts.push(...meterDigits(role.meter, x + 11 + (role.opens ? 0 : 5)))
     x += 28
   }
-  if (role.repeatStart) parts.push(...repeatSign(x + (role.opens || role.meter ? 2 : 0), 1, { strings, tabTop }))
+  if (role.repeatStart) parts.push(...repeatSign(x + (role.opens || role.meter ? 2 : 0), 1, measures))
   return parts
 }
 
@@ -69,7 +83,7 @@ const line = (x: number, top: number, bottom: number, width: number): Element =>
   svg('path', { 'd': `M${at(x)} ${at(top)}V${at(bottom)}`, 'stroke': 'currentColor', 'stroke-width': width, 'fill': 'none' })
 
 /** Two dots on the staff's and the tab's middle spaces, thick and thin line; `side` 1 opens, −1 closes. */
-function repeatSign(x: number, side: 1 | -1, { strings, tabTop }: FrameMeasures): Element[] {
+function repeatSign(x: number, side: 1 | -1, { strings, tabTop }: Pick<FrameMeasures, 'strings' | 'tabTop'>): Element[] {
   const bottom = tabTop + tabHeight(strings)
   const dot = (dy: number): Element => svg('circle', { cx: at(x + side * 9.5), cy: at(dy), r: 2 })
   const middle = tabTop + tabHeight(strings) / 2

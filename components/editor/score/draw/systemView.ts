@@ -21,6 +21,9 @@ export interface Surface {
 const LEFT = 10
 const ABOVE = 22
 const BELOW = 22
+/** From the highest note up to the line of metronome marks, and what a mark takes above that line. */
+const TEMPO_GAP = 20
+const TEMPO_HEIGHT = 20
 /** The tab stands at least this far below the staff's top line. */
 const TAB_TOP = 104
 const TAB_GAP = 34
@@ -73,7 +76,8 @@ export class SystemView {
   private place(): void {
     const strings = this.score.head.strings.length
     const { top, bottom, width } = this.system
-    this.top = Math.max(36, -top + ABOVE)
+    const hasTempo = this.system.bars.some(bar => bar.role.tempo)
+    this.top = Math.max(36, -top + ABOVE, hasTempo ? TEMPO_HEIGHT - this.tempoAt : 0)
     this.tabTop = Math.max(TAB_TOP, bottom + TAB_GAP)
     this.height = this.top + this.tabTop + tabHeight(strings) + (this.surface.lanesOf ? lanesHeight(strings) : LANES_TOP) + BELOW
     const [w, h] = [width + LEFT + 1, this.height]
@@ -82,6 +86,11 @@ export class SystemView {
     this.drawing.setAttribute('height', `${at(h * this.scale)}`)
     this.element.style.height = `${at(h * this.scale)}px`
     this.drawing.style.setProperty('--share', `${at(100 * w / (this.surface.line + LEFT + 1))}%`)
+  }
+
+  /** Above the highest note and its tuplet's figure. */
+  private get tempoAt(): number {
+    return this.system.top - TEMPO_GAP
   }
 
   /** From the window's points to the system's. */
@@ -141,7 +150,7 @@ export class SystemView {
   private drawFrame(): void {
     const places = barPlaces(this.score)
     const strings = this.score.head.strings.length
-    const frame = drawFrame(this.system, { strings, tabTop: this.tabTop },
+    const frame = drawFrame(this.system, { strings, tabTop: this.tabTop, tempoAt: this.tempoAt },
       this.system.bars.map(bar => places[bar.index]!.number), this.system.bars.map(bar => this.score.bars[bar.index]!.repeatEnd))
     this.frame.replaceWith(frame)
     this.frame = frame
