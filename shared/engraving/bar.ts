@@ -4,7 +4,7 @@ import type { Context } from '../score/context'
 import { VOICE_NAMES, type Bar, type Note, type VoiceName } from '../score/types'
 import { beamsOf, type BeamGroup } from './beams'
 import { carriedKey, linksOf, type Carried } from './links'
-import { reach, stemByPosition } from './stems'
+import { reach, restReach, stemByPosition } from './stems'
 import { bodyWidth, leastWidth, momentsOf, slicesOf } from './spacing'
 import { placeEvents, type Placed } from './staff'
 import type { BarNotation, EngravedTuplet, StaffEvent, Stem, TabMark } from './types'
@@ -52,7 +52,7 @@ function engrave(bar: Bar, { context, carried, pickup }: BarSurroundings): BarNo
   const missing = isLess(longest, length) ? subtract(length, longest) : null
   const total = max(length, longest)
   const slices = slicesOf(moments, events, tab, beamed, longest)
-  const reaches = events.filter(event => !event.hidden).map(event => reach(event.notes, event.stem))
+  const reaches = events.filter(event => !event.hidden).map(event => (event.notes.length ? reach(event.notes, event.stem) : restReach(event.restPosition)))
   return {
     events, beams, tab, links, slices, total, missing,
     tuplets: voices.flatMap(name => tupletsOf(bar, name, beamed, stems, voices.length)),
@@ -99,6 +99,19 @@ function stemsOf(placed: readonly Placed[], groups: ReadonlyMap<VoiceName, reado
 
 /** With two voices rests leave the middle: the upper's rise, the lower's sink. */
 const REST_POSITION: Record<VoiceName, number> = { upper: 8, middle: 4, lower: 0 }
+/** Steps from the middle of a rest to a head above or below that it does not touch: half a quarter rest, half a head and a little air. */
+const REST_CLEARANCE = 5
+
+/** Where a rest stands: further out where another voice has a note in its column (Gould, "Rests in double-stemmed writing"); on a line. */
+function restPosition({ event, voice, start }: Placed, voices: readonly VoiceName[], all: readonly Placed[]): number {
+  if (voices.length < 2 || event.notes.length) return REST_POSITION.middle
+  const heads = all.filter(each => each.voice !== voice && equals(each.start, start)).flatMap(each => each.notes.map(note => note.position))
+  const usual = REST_POSITION[voice]
+  if (!heads.length || voice === 'middle') return usual
+  return voice === 'upper'
+    ? Math.max(usual, 2 * Math.ceil((Math.max(...heads) + REST_CLEARANCE) / 2))
+    : Math.min(usual, 2 * Math.floor((Math.min(...heads) - REST_CLEARANCE) / 2))
+}
 
 function staffEvent(each: Placed, moments: readonly Fraction[], stems: ReadonlyMap<string, Stem>, voices: readonly VoiceName[], all: readonly Placed[]): StaffEvent {
   const { event, voice, start, duration, notes } = each
@@ -109,7 +122,7 @@ function staffEvent(each: Placed, moments: readonly Fraction[], stems: ReadonlyM
     slice: moments.findIndex(at => compare(at, start) === 0),
     hidden: !!event.hidden || doubled,
     stem: stems.get(event.id)!,
-    restPosition: voices.length > 1 ? REST_POSITION[voice] : 4,
+    restPosition: restPosition(each, voices, all),
   }
 }
 

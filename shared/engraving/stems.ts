@@ -24,3 +24,7 @@ export function reach(notes: readonly Pick<StaffNote, 'position'>[], stem: Stem)
     ? { top: Math.min(high - STEM_LENGTH, middle), bottom: low + 6 }
     : { top: high - 6, bottom: Math.max(low + STEM_LENGTH, middle) }
 }
+
+/** Highest and lowest y of a rest around its place; the longest shapes reach a space and a half either way. */
+export const restReach = (position: number): { top: number, bottom: number } =>
+  ({ top: yOfPosition(position) - 15, bottom: yOfPosition(position) + 15 })

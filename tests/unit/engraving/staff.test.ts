@@ -106,6 +106,18 @@ describe('rests', () => {
     expect(bar('{4/4} zq 1/0h.').events[0]!.restPosition).toBe(4)
   })
 
+  it('keep clear of what another voice strikes in the same column', () => {
+    // Open string 4 is D3, written D4: position −1, below the staff. The rest beneath it reaches a space and a half up.
+    const { events, bottom } = bar('{4/4} 4/0q 1/0h. ; zq 6/0h.')
+    const [rest, note] = [events.find(event => !event.notes.length)!, events.find(event => event.voice === 'upper')!]
+    expect(note.notes.map(each => each.position)).toEqual([-1])
+    expect(rest.restPosition + 3).toBeLessThanOrEqual(-1 - 1)
+    expect(bottom).toBeGreaterThanOrEqual(40 + 5 * -rest.restPosition)
+    // Where nothing is in the way it stands where it does usually, on a line either way.
+    expect(bar('{4/4} 1/0q 1/0h. ; zq 6/0h.').events.find(event => !event.notes.length)!.restPosition).toBe(0)
+    expect(bar('{4/4} zq 1/0h. ; 1/12q 6/0h.').events.find(event => !event.notes.length)!.restPosition % 2).toBe(0)
+  })
+
   it('that are hidden keep their place in time', () => {
     const { events, slices } = bar('{4/4} _h 1/0h')
     expect([events[0]!.hidden, events[1]!.slice, slices.length]).toEqual([true, 1, 2])

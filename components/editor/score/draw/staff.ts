@@ -48,7 +48,12 @@ export function createPen(vex: Vex): Pen {
 const MAX_SLOPE = 0.15
 
 const ACCIDENTAL: Readonly<Record<number, string>> = { [-2]: 'bb', [-1]: 'b', 0: 'n', 1: '#', 2: '##' }
-const REST_STEPS = ['e/4', 'f/4', 'g/4', 'a/4', 'b/4', 'c/5', 'd/5', 'e/5', 'f/5']
+const LETTERS = 'cdefgab'
+/** The written pitch at a staff position, as VexFlow names it; 0 is the bottom line, E4. */
+function stepAt(position: number): string {
+  const steps = position + 4 * LETTERS.length + LETTERS.indexOf('e')
+  return `${LETTERS[steps % LETTERS.length]}/${Math.floor(steps / LETTERS.length)}`
+}
 
 function headCode(event: StaffEvent, head: string): string {
   const filling = event.base === 1 ? 0 : event.base === 2 ? 1 : 2
@@ -58,7 +63,7 @@ function headCode(event: StaffEvent, head: string): string {
 function staveNote({ vex, nowhere }: Pen, event: StaffEvent): StaveNote {
   const isRest = event.notes.length === 0
   // A whole rest hangs from the line above the one that other rests stand on.
-  const rest = REST_STEPS[Math.min(8, event.restPosition + (event.base === 1 && event.restPosition === 4 ? 2 : 0))]!
+  const rest = stepAt(event.restPosition + (event.base === 1 && event.restPosition === 4 ? 2 : 0))
   const note = new vex.StaveNote({
     keys: isRest ? [rest] : event.notes.map(each => `${each.step.toLowerCase()}/${each.octave}${headCode(event, each.head)}`),
     duration: `${event.base}`, dots: event.dots, ...(isRest && { type: 'r' }), stemDirection: event.stem,
