@@ -100,10 +100,13 @@ export class Sheet {
     return this.layout.systemNeighbour(cursor, direction)
   }
 
-  /** Brings the cursor's system into the window. */
+  /** Brings the cursor's system into the window, and of a system higher than the window the cursor's cell. */
   scrollToCursor(behavior: ScrollBehavior = 'auto'): void {
     const here = this.selection && this.layout.placeOf(this.selection.cursor)
-    if (here) this.layout.views[here.system]?.element.scrollIntoView({ block: 'nearest', behavior })
+    const element = here && this.layout.views[here.system]?.element
+    if (!element) return
+    element.scrollIntoView({ block: 'nearest', behavior })
+    element.querySelector('.cursor-cell')?.scrollIntoView({ block: 'nearest', behavior })
   }
 
   /** Width for the systems in points; the bracket stands left of it. */
