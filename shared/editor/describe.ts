@@ -1,12 +1,14 @@
 import { contextOf, type Context } from '../score/context'
 import { add, compare, divide, equals, fraction, subtract, toNumber, ZERO, type Fraction } from '../score/fraction'
-import { barPlaces } from '../score/numbers'
+import { barLabel, barPlaces } from '../score/numbers'
 import { capoOffset, raisedKey, soundingLabel } from '../score/sounding'
 import { VULGAR } from '../score/text'
 import { barLength, beatOf, meterLength, plainLength, surplus } from '../score/time'
 import { BASES, VOICE_NAMES, type Bar, type Head, type Key, type Length, type Meter, type Note, type Score, type ScoreEvent, type Voice, type VoiceName } from '../score/types'
 import { momentOf, placeOf } from './place'
 import type { EditorState } from './state'
+
+export { barLabel }
 
 /** Voices as players speak of them. */
 export const VOICE_LABELS: Readonly<Record<VoiceName, string>> = { upper: 'upper voice', lower: 'lower voice', middle: 'middle voice' }
@@ -51,13 +53,6 @@ function mixedLabel(value: Fraction): string {
   const vulgar = VULGAR[`${rest.n}/${rest.d}`]
   if (whole === 0) return vulgar ?? `${rest.n}/${rest.d}`
   return `${whole}${vulgar ?? ` + ${rest.n}/${rest.d}`}`
-}
-
-/** A bar by the number that is printed: "Bar 2"; what stands before bar 1 is the "Pickup".
- * @param index position of the bar, from 0 */
-export function barLabel(score: Score, index: number): string {
-  const number = barPlaces(score)[index]?.number ?? index + 1
-  return number > 0 ? `Bar ${number}` : 'Pickup'
 }
 
 /** What is missing before the first beat of a bar, whose beats are counted from the end where it is a pickup. */
@@ -129,14 +124,21 @@ export function cursorSentence(state: EditorState): string {
   return [what, `${bar}, beat ${beat}, ${voice}`, fill].filter(Boolean).join('. ') + '.'
 }
 
-/** A bar read aloud, voice by voice: "Bar 2, 6/8. Upper voice: beat 1, eighth, string 2 fret 1, C4; …". Meter, key and repeats where they are stated.
+/** "2 sharps", "1 flat", "no sharps or flats" */
+function signatureLabel({ fifths }: Key): string {
+  const count = Math.abs(fifths)
+  return count ? `${count} ${fifths > 0 ? 'sharp' : 'flat'}${count > 1 ? 's' : ''}` : 'no sharps or flats'
+}
+
+/** A bar read aloud, voice by voice: "Bar 2, 6/8. Upper voice: beat 1, eighth, string 2 fret 1, C4; …". Meter, key, tempo and repeats where they are stated.
  * @param index position of the bar, from 0; empty text when there is none */
 export function readBar(score: Score, index: number): string {
   const bar = score.bars[index]
   if (!bar) return ''
   const context = contextOf(score, index)
   const stated = [
-    bar.meter && `${bar.meter.beats}/${bar.meter.unit}`, bar.repeatStart && 'repeat begins',
+    bar.meter && `${bar.meter.beats}/${bar.meter.unit}`, bar.key && signatureLabel(bar.key),
+    bar.tempo && `${lengthLabel(bar.tempo)} = ${bar.tempo.perMinute}`, bar.repeatStart && 'repeat begins',
     bar.repeatEnd && (bar.repeatEnd === 2 ? 'repeat ends' : `repeat ends, played ${bar.repeatEnd} times`),
   ].filter(text => typeof text === 'string')
   const voices = VOICE_NAMES.flatMap((name) => {

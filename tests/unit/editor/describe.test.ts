@@ -81,6 +81,12 @@ describe('a bar read aloud', () => {
     expect(readBar(score, 3)).toBe('')
   })
 
+  it('says key and tempo where they are stated', () => {
+    const score = parseScore('{6/8} {D} 3/0h. | {F} 3/0h. | {C} 3/0h.')
+    const told = { ...score, bars: score.bars.map((bar, index) => (index ? bar : { ...bar, tempo: { perMinute: 96, base: 4, dots: 1 } as const })) }
+    expect([0, 1, 2].map(index => readBar(told, index).replace(/\. .*/, ''))).toEqual(['Bar 1, 6/8, 2 sharps, dotted quarter = 96', 'Bar 2, 1 flat', 'Bar 3, no sharps or flats'])
+  })
+
   it('has words for every score', () => {
     fc.assert(fc.property(scores, (score) => {
       expect(cursorSentence(openEditor(score))).not.toMatch(/undefined|null|NaN/)
