@@ -1,4 +1,5 @@
 import { isEqual } from '../score/equal'
+import { barLabel } from '../score/numbers'
 import { validateBar, validateHead, validateScore } from '../score/validate'
 import type { Score } from '../score/types'
 import type { EditResult, PatchBar, PatchHead } from './types'
@@ -8,10 +9,10 @@ export function applyPatchBar(score: Score, edit: PatchBar): EditResult {
   const index = score.bars.findIndex(bar => bar.id === edit.bar)
   const bar = score.bars[index]
   if (!bar) return refuse(edit, 'missing', 'That bar is not in the arrangement any more.')
-  if (!isEqual(currentOf(bar, edit.after), edit.before)) return refuse(edit, 'changed', `Bar ${index + 1} has changed meanwhile.`)
+  if (!isEqual(currentOf(bar, edit.after), edit.before)) return refuse(edit, 'changed', `${barLabel(score, index)} has changed meanwhile.`)
   const next = patched(bar, edit.after)
   const problem = validateBar(next, score.head)
-  if (problem) return refuse(edit, 'invalid', `Bar ${index + 1}: ${problem}`)
+  if (problem) return refuse(edit, 'invalid', `${barLabel(score, index)}: ${problem}`)
   return { score: replaceBar(score, index, next), inverse: { ...edit, before: edit.after, after: edit.before }, touched: [edit.bar] }
 }
 

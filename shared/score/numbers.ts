@@ -39,3 +39,13 @@ export function barPlaces(score: Score): readonly BarPlace[] {
 
 /** Printed numbers of all bars, by position. */
 export const barNumbers = (score: Score): readonly number[] => barPlaces(score).map(place => place.number)
+
+/** A bar by the number that is printed: "Bar 2"; what stands before bar 1 is the "Pickup".
+ * @param index position of the bar, from 0 */
+export function barLabel(score: Score, index: number): string {
+  const number = barPlaces(score)[index]?.number ?? index + 1
+  return number > 0 ? `Bar ${number}` : 'Pickup'
+}
+
+/** The same within a sentence: "bar 2", "the pickup". */
+export const barInWords = (score: Score, index: number): string => barLabel(score, index).replace('Pickup', 'the pickup').replace('Bar', 'bar')

@@ -1,4 +1,5 @@
 import { ZERO, compare, fraction } from './fraction'
+import { barLabel } from './numbers'
 import { midiOf, parsePitch } from './pitch'
 import { isFretOnNeck } from './sounding'
 import { voiceTotal } from './time'
@@ -96,6 +97,6 @@ export function validateScore(score: Score): string | null {
   if (double) return `The bar id ${double} is used twice.`
   return first(score.bars, (bar, index) => {
     const problem = validateBar(bar, score.head)
-    return problem && `Bar ${index + 1}: ${problem}`
+    return problem && `${barLabel(score, index)}: ${problem}`
   })
 }

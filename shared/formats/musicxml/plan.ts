@@ -26,7 +26,6 @@ export interface Plan {
   /** Ticks of a quarter: MusicXML's divisions. */
   readonly divisions: number
   readonly bars: readonly BarPlan[]
-  readonly hasPickup: boolean
 }
 
 /** Plain lengths are few, and are computed once. */
@@ -64,9 +63,7 @@ export function planOf(score: Score, contexts: readonly Context[]): Plan {
     }
   })
   const bars = score.bars.map((bar, index) => planBar(bar, contexts[index]!, index === 0, whole, lengths))
-  const [first] = score.bars
-  const hasPickup = first !== undefined && isLess(barLength(first, contexts[0]!.meter), meterLength(contexts[0]!.meter))
-  return { divisions: whole / 4, bars, hasPickup }
+  return { divisions: whole / 4, bars }
 }
 
 function planBar(bar: Bar, { meter }: Context, isFirst: boolean, whole: number, lengths: ReadonlyMap<Voice, readonly Fraction[]>): BarPlan {

@@ -1,4 +1,5 @@
 import { DEFAULT_KEY, DEFAULT_METER, contextsOf, type Context } from '../../score/context'
+import { barPlaces } from '../../score/numbers'
 import { fifthsOf, parsePitch, STEPS, type Spelling } from '../../score/pitch'
 import { capoOffset, raisedKey } from '../../score/sounding'
 import { STANDARD_TUNING } from '../../score/create'
@@ -27,6 +28,7 @@ export function writeMusicXml(score: Score, options: WriteOptions = {}): string 
   const links = linksOf(score)
   const plan = planOf(score, contexts)
   const pieces = createBarPieces()
+  const numbers = measureNumbers(score)
   const out: string[] = [
     '<?xml version="1.0" encoding="UTF-8"?>\n<score-partwise version="4.0">\n',
     titleXml(score.head), identificationXml(score, options), PART_LIST, '<part id="P1">\n',
@@ -37,13 +39,19 @@ export function writeMusicXml(score: Score, options: WriteOptions = {}): string 
     const attributes = isFirst ? firstAttributes(context, plan.divisions) : changedAttributes(bar, context)
     const opening = isFirst ? openingXml(score) : ''
     const given = { context, links, plan: plan.bars[index]!, pieces }
-    const number = plan.hasPickup ? index : index + 1
-    out.push(`<measure number="${number}"${isFirst && plan.hasPickup ? ' implicit="yes"' : ''}>`)
+    out.push(`<measure ${numbers[index]}>`)
     writeBar(out, bar, given, attributes, opening, index === score.bars.length - 1)
     out.push('</measure>\n')
   })
   out.push('</part>\n</score-partwise>\n')
   return out.join('')
+}
+
+/** Pickups and second halves of split bars are not counted (XSD, measure-attributes: implicit); these are named apart, as numbers are unique. */
+function measureNumbers(score: Score): string[] {
+  let uncounted = 0
+  return barPlaces(score).map(({ number, pickup }, index) =>
+    (pickup ? `number="${index ? `X${++uncounted}` : number}" implicit="yes"` : `number="${number}"`))
 }
 
 const titleXml = (head: Head): string => around('work', head.title && leaf('work-title', head.title))

@@ -118,6 +118,21 @@ describe('an edit is refused', () => {
     expect(reasonOf(score, { kind: 'moveBars', bars: ['b2'], from: null, to: null })).toBe('changed')
   })
 
+  it('in words that name the bar as it is printed', () => {
+    const tune = parseScore('{4/4} {len=1/4} 3/0q | 3/2w')
+    const [pickup, first] = tune.bars
+    const message = (edit: Edit) => {
+      const result = applyEdit(tune, edit)
+      return isRefused(result) ? result.refused.message : null
+    }
+    const gone = { ...voice, events: [{ ...voice.events[0]!, notes: [{ id: 'x', string: 7, fret: 1 }] }] }
+    expect([
+      message({ kind: 'replaceVoice', bar: pickup!.id, voice: 'upper', before: null, after: null }), message({ kind: 'replaceVoice', bar: first!.id, voice: 'upper', before: null, after: null }),
+      message({ kind: 'patchBar', bar: first!.id, before: { length: { n: 1, d: 2 } }, after: { length: null } }),
+      message({ kind: 'replaceVoice', bar: first!.id, voice: 'lower', before: null, after: gone }),
+    ]).toEqual(['The upper voice of the pickup has changed meanwhile.', 'The upper voice of bar 1 has changed meanwhile.', 'Bar 1 has changed meanwhile.', 'Bar 1: there is no string 7.'])
+  })
+
   it('where no arrangement would be left, or no sound music', () => {
     const twice = { ...voice, events: [{ ...voice.events[0]!, notes: [{ id: 'x', string: 3, fret: 1 }, { id: 'y', string: 3, fret: 2 }] }] }
     const replace = (after: typeof voice): Edit => ({ kind: 'replaceVoice', bar: 'b1', voice: 'upper', before: voice, after })

@@ -43,6 +43,11 @@ describe('the form of the export', () => {
     const measures = all(one(exported('{4/4} {len=1/4} 1/0q | 1/0w'), 'part'), 'measure')
     expect(measures.map(each => [each.attributes.number, each.attributes.implicit])).toEqual([['0', 'yes'], ['1', undefined]])
   })
+  it('does not count the second half of a bar split by a repeat', () => {
+    // XSD, measure-attributes: implicit "for pickup measures and the last half of mid-measure repeats"; numbers that are not unique "can cause problems".
+    const measures = all(one(exported('{4/4} {len=1/4} 1/0q | {:|} {len=3/4} 1/0h. | {len=1/4} 1/2q | 1/0w'), 'part'), 'measure')
+    expect(measures.map(each => [each.attributes.number, each.attributes.implicit])).toEqual([['0', 'yes'], ['1', undefined], ['X1', 'yes'], ['2', undefined]])
+  })
   it('states tuning, capo, people, source and the day', () => {
     const score = parseScore('{D} 1/0q', { title: 'A & B', composer: 'C', arranger: 'D', rights: '©', source: 'S', strings: strings('D2 A2 D3 F#3 A3 D4'), capos: [{ fret: 2 }] })
     const root = parseXml(writeMusicXml(score, { date: '2026-03-01' })).root!

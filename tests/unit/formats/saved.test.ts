@@ -63,7 +63,7 @@ describe('what is refused, saying what and where', () => {
     ['an unknown field', changed((saved) => { saved.score.bars[1].colour = 'red' }), 'score.bars[1]: Unrecognized key: "colour"'],
     ['a fraction not in lowest terms', changed((saved) => { saved.score.bars[0].length = { n: 2, d: 16 } }), 'score.bars[0].length: is not in lowest terms'],
     ['no pitch', changed((saved) => { saved.score.head.strings[2].pitch = 'H3' }), 'String 3: “H3” is no pitch'],
-    ['music that is none', changed((saved) => { saved.score.bars[1].voices = { upper: { events: [{ id: 'e', length: { base: 4, dots: 0 }, notes: [{ id: 'n', string: 1, fret: 30 }] }] } } }), 'Bar 2: string 1 has no fret 30'],
+    ['music that is none, in the bar behind the pickup', changed((saved) => { saved.score.bars[1].voices = { upper: { events: [{ id: 'e', length: { base: 4, dots: 0 }, notes: [{ id: 'n', string: 1, fret: 30 }] }] } } }), 'Bar 1: string 1 has no fret 30'],
   ])('%s', (_, text, message) => {
     const result = readSaved(text)
     expect('problem' in result && result.problem).toContain(message)
