@@ -1,7 +1,7 @@
 import { equals } from '../score/fraction'
-import { PARTIAL_AT_FRET, capoFret, isFretOnNeck, openMidi } from '../score/sounding'
+import { capoFret, isFretOnNeck, openMidi } from '../score/sounding'
 import type { Head, Note, Score, ScoreEvent, Voice, VoiceName } from '../score/types'
-import { carryNotes, isTogether, lastOn, nextOn, type Bound, type CarryNotes, type Item, type Place } from './carryNotes'
+import { carryNotes, isTogether, lastOn, nextOn, touchOf, type Bound, type CarryNotes, type Item, type Place } from './carryNotes'
 import { fretDistance } from './neck'
 
 /**
@@ -44,12 +44,6 @@ interface Work {
   readonly reach: number
   /** Where notes are by now; those that are not in it are where they were. */
   readonly places: Map<Item, Place>
-}
-
-/** Where a harmonic of this partial is touched nearest to the nut, in frets. */
-const touchOf = (partial: number): number | null => {
-  const frets = Object.keys(PARTIAL_AT_FRET).map(Number).filter(fret => PARTIAL_AT_FRET[fret] === partial)
-  return frets.length ? Math.min(...frets) : null
 }
 
 /** A harmonic's pitch is another string's too only where their open pitches are octaves apart. */
@@ -111,16 +105,14 @@ function tryString(work: Work, bound: Bound, string: number): Trial | null {
   return { places, ...(fault && { fault }) }
 }
 
-const stringsOfHead = (head: Head): number[] => head.strings.map((_, index) => index + 1)
+const stringNumbers = ({ after }: Work): number[] => after.strings.map((_, index) => index + 1)
 
 /** Other strings on which bound notes can sound as before, the one nearest to where the hand was first. */
 const trialsOf = (work: Work, bound: Bound): readonly (Trial & { readonly string: number })[] => {
   const own = bound[0]!.note
-  return stringsOfHead(work.after).filter(string => string !== own.string)
-    .flatMap((string) => {
-      const trial = tryString(work, bound, string)
-      return trial ? [{ ...trial, string }] : []
-    })
+  return stringNumbers(work).filter(string => string !== own.string)
+    .map(string => ({ string, trial: tryString(work, bound, string) }))
+    .flatMap(({ string, trial }) => (trial ? [{ ...trial, string }] : []))
     .sort((a, b) => Math.abs(a.places[0]!.fret - own.fret) - Math.abs(b.places[0]!.fret - own.fret) || Math.abs(a.string - own.string) - Math.abs(b.string - own.string))
 }
 
@@ -151,7 +143,7 @@ function reasonFor(work: Work, bound: Bound, { note }: Item): Pick<LeftNote, 're
   const trials = trialsOf(work, bound)
   const hindered = (['reach', 'slur', 'taken'] as const).map(fault => trials.find(each => each.fault === fault)).find(Boolean)
   if (hindered?.fault) return { reason: hindered.fault, otherString: hindered.string }
-  const places = stringsOfHead(work.after).map(string => placeOn(work, note, string))
+  const places = stringNumbers(work).map(string => placeOn(work, note, string))
   if (bound.length > 1 && places.some(place => place && isFretOnNeck(work.after, place.string, place.fret))) return { reason: 'bound' }
   if (note.harmonic) return { reason: 'harmonic' }
   return { reason: places.every(place => place && place.fret < 0) ? 'low' : 'high' }

@@ -1,5 +1,5 @@
 import { add, compare, equals, isLess, type Fraction } from '../score/fraction'
-import { soundingMidi } from '../score/sounding'
+import { PARTIAL_AT_FRET, soundingMidi } from '../score/sounding'
 import { lengthOf, startsOf } from '../score/time'
 import { VOICE_NAMES, type Bar, type Harmonic, type Head, type Note, type Score, type VoiceName } from '../score/types'
 
@@ -71,6 +71,12 @@ export function carryNotes(score: Score): CarryNotes {
   const groups = new Map<Item, Item[]>()
   for (const item of bars.flat()) groups.set(root(item), [...groups.get(root(item)) ?? [], item])
   return { bars, bound: [...groups.values()], targets }
+}
+
+/** Where a harmonic of this partial is touched nearest to the nut, in frets; null where no place is known. */
+export const touchOf = (partial: number): number | null => {
+  const frets = Object.keys(PARTIAL_AT_FRET).map(Number).filter(fret => PARTIAL_AT_FRET[fret] === partial)
+  return frets.length ? Math.min(...frets) : null
 }
 
 /** Whether two notes of one bar sound at one moment, by their written lengths. */

@@ -30,13 +30,13 @@ export function leftSentence(left: LeftNote, before: Head, after: Head, fifths: 
   return `${place}: ${because(label(before, left, fifths), left)}. ${consequence}`
 }
 
-/** "84 of 96 notes keep their sound: 60 as they are, 20 at another fret, 4 on another string. 12 have no place." */
+/** "84 of 96 notes keep their sound: 60 as they are, 20 at another fret, 4 on another string. 12 notes have no place and sound otherwise." */
 export function carrySentence({ counts, left }: Pick<Carried, 'counts' | 'left'>): string {
   const { notes, same, fret, string } = counts
   if (notes === 0) return 'There are no notes yet.'
   const parts = [same && `${same} where they are`, fret && `${fret} at another fret`, string && `${string} on another string`].filter(part => typeof part === 'string')
   const kept = left.length === 0 ? `${notes === 1 ? 'The one note keeps its' : `All ${notes} notes keep their`} sound` : `${notes - left.length} of ${notes} notes keep their sound`
-  const rest = left.length === 0 ? '' : ` ${left.length === 1 ? '1 note has' : `${left.length} notes have`} no place and would sound otherwise.`
+  const rest = left.length === 0 ? '' : ` ${left.length === 1 ? '1 note has' : `${left.length} notes have`} no place and ${left.length === 1 ? 'sounds' : 'sound'} otherwise.`
   return `${kept}${parts.length ? `: ${listed(parts)}` : ''}.${rest}`
 }
 

@@ -203,6 +203,9 @@ describe('bodies', () => {
     ['half a surrogate pair', '/api/arrangements', { title: 'a\uD834b' }, 'title'],
     ['a field that is not known', '/api/arrangements', { title: 'X', owner: 'me' }, ''],
     ['a score with a string zero', '/api/arrangements', { score: { ...parseScore('3/0q'), bars: [{ id: 'b1', voices: { upper: { events: [{ id: 'e', length: { base: 4, dots: 0 }, notes: [{ id: 'n', string: 0, fret: 1 }] }] } } }] } }, 'score.bars.0.voices.upper.events.0.notes.0.string'],
+    ['a tuning without a name', '/api/tunings', { name: ' ', strings: ['E4', 'B3', 'G3', 'D3'].map(pitch => ({ pitch })) }, 'name'],
+    ['notes longer than a page', '/api/tunings', { name: 'X', notes: 'n'.repeat(2001), strings: ['E4', 'B3', 'G3', 'D3'].map(pitch => ({ pitch })) }, 'notes'],
+    ['eleven strings', '/api/tunings', { name: 'X', strings: Array.from({ length: 11 }, () => ({ pitch: 'E3' })) }, 'strings'],
     ['no e-mail address', '/api/auth/sign-in', { email: 'nobody', password: 'x' }, 'email'],
     ['a short password', '/api/auth/register', { name: 'X', email: 'x@example.com', password: 'short' }, 'password'],
   ]
@@ -226,6 +229,8 @@ describe('bodies', () => {
     const { status, body } = await maren.send('POST', '/api/arrangements', { title: 'X', strings })
     expect([status, body.data.code]).toEqual([422, 'refused'])
     expect(body.data.message).toContain('String 4')
+    const tuning = await maren.send('POST', '/api/tunings', { name: 'X', strings })
+    expect(tuning).toMatchObject({ status: 422, body: { data: { code: 'refused', field: 'strings', message: body.data.message } } })
   })
 })
 

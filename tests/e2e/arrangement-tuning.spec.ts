@@ -70,7 +70,7 @@ test('keeping the sound moves what can move, lists the rest, and one undo brings
   await signInDemo(page)
   const id = await openTuning(page, '6/0q 6/2q 5/0q 1/2q', LOW)
   await choose(page, STANDARD)
-  await expect(page.getByTestId('plan-sound')).toContainText('3 of 4 notes keep their sound: 1 where they are and 2 at another fret. 1 note has no place and would sound otherwise.')
+  await expect(page.getByTestId('plan-sound')).toContainText('3 of 4 notes keep their sound: 1 where they are and 2 at another fret. 1 note has no place and sounds otherwise.')
   await page.getByText('Which notes have no place').click()
   const sentence = 'String 6, fret 0: D2 is lower than any string now goes. Left there, it sounds E2.'
   await expect(page.getByTestId('left-notes')).toContainText(`Bar 1${sentence}`)

@@ -229,7 +229,7 @@ describe('of any piece and any two tunings', () => {
 describe('in words', () => {
   it('says what is kept, what moves and what has no place', () => {
     const { result } = carried('6/0q 6/2q 5/0q', doubleDropD, standard)
-    expect(carrySentence(result)).toBe('2 of 3 notes keep their sound: 1 where they are and 1 at another fret. 1 note has no place and would sound otherwise.')
+    expect(carrySentence(result)).toBe('2 of 3 notes keep their sound: 1 where they are and 1 at another fret. 1 note has no place and sounds otherwise.')
     expect(carrySentence(carried('2/0q', standard, fourths).result)).toBe('The one note keeps its sound: 1 on another string.')
     expect(carrySentence({ counts: { notes: 0, same: 0, fret: 0, string: 0 }, left: [] })).toBe('There are no notes yet.')
     expect([soundSentence({ notes: 9, changed: 4 }), soundSentence({ notes: 9, changed: 0 })]).toEqual(['4 of 9 notes would sound otherwise.', 'No note would sound otherwise.'])
