@@ -104,7 +104,7 @@ class Rebasing {
   private patch(edit: PatchBar | PatchHead, bar: string | null, holder: object | undefined): readonly Edit[] {
     const fields = this.freeFields(bar, edit.before, edit.after, holder)
     if (!fields.length) return []
-    const next = fields.length === Object.keys(edit.after).length ? edit : { ...edit, before: pick(edit.before, fields), after: pick(edit.after, fields) }
+    const next = fields.length === Object.keys(edit.after).length ? edit : narrowed(edit, fields)
     if (this.apply(next)) return [next]
     for (const field of fields) this.fieldConflict(bar, field, edit.after, holder)
     return []
@@ -169,6 +169,12 @@ class Rebasing {
 
 const valueOf = (holder: object | undefined, field: string): unknown => (holder as Record<string, unknown> | undefined)?.[field] ?? null
 const pick = <T extends object>(from: T, fields: readonly string[]): T => Object.fromEntries(fields.map(field => [field, valueOf(from, field)])) as T
+
+/** A patch of some of its fields only. */
+const narrowed = (edit: PatchBar | PatchHead, fields: readonly string[]): Edit =>
+  (edit.kind === 'patchBar'
+    ? { ...edit, before: pick(edit.before, fields), after: pick(edit.after, fields) }
+    : { ...edit, before: pick(edit.before, fields), after: pick(edit.after, fields) })
 
 /** The edits that put my reading of a conflict in place of theirs; null where there is nothing to put. Undoing them brings theirs back. */
 export function takeMine(score: Score, conflict: Conflict): readonly Edit[] | null {
