@@ -25,6 +25,7 @@ interface Unsents extends DBSchema {
 
 /** Unsent work of all tabs in the browser's own database. Every call is one transaction: all of it is kept or none. */
 export interface UnsentStore {
+  /** Adds the last transactions of a queue to the others. Rejects where these are not all there, as when the browser has cleared its data. */
   append: (queue: SaveQueue, transactions: readonly Unsent[]) => Promise<void>
   putHead: (queue: SaveQueue, refused?: RefusedCopy) => Promise<void>
   /** Drops what the server has: everything up to and including transaction `through`. */
@@ -41,11 +42,18 @@ type Writing = IDBPTransaction<Unsents, ('queues' | 'unsent' | 'readings')[], 'r
 
 export const UNSENT_DATABASE = 'copperwound-unsent'
 
-const open = (): Promise<IDBPDatabase<Unsents>> => openDB<Unsents>(UNSENT_DATABASE, 1, {
+/** @param lost the connection is no more: the browser closed it, or it made way for a newer version or a deletion */
+const open = (lost: () => void): Promise<IDBPDatabase<Unsents>> => openDB<Unsents>(UNSENT_DATABASE, 1, {
   upgrade(db) {
     db.createObjectStore('queues', { keyPath: 'clientId' }).createIndex('arrangement', 'arrangement')
     db.createObjectStore('unsent', { keyPath: ['clientId', 'number'] })
     db.createObjectStore('readings', { keyPath: 'id' }).createIndex('arrangement', 'arrangement')
+  },
+  terminated: lost,
+  blocking(_current, _blocked, event) {
+    lost()
+    const connection = event.target as IDBDatabase
+    connection.close()
   },
 })
 
@@ -55,10 +63,13 @@ const allOf = (clientId: string, through = Infinity): IDBKeyRange => IDBKeyRange
 export function createUnsentStore(arrangement: string, user: string): UnsentStore {
   let opening: Promise<IDBPDatabase<Unsents>> | null = null
   const database = (): Promise<IDBPDatabase<Unsents>> => {
-    opening ??= open()
+    if (opening) return opening
     // The next call tries anew.
-    opening.catch(() => (opening = null))
-    return opening
+    const lost = () => void (opening === current && (opening = null))
+    const current = open(lost)
+    opening = current
+    current.catch(lost)
+    return current
   }
 
   const headOf = ({ unsent: _, ...head }: SaveQueue, refused?: RefusedCopy): KeptHead =>
@@ -77,8 +88,12 @@ export function createUnsentStore(arrangement: string, user: string): UnsentStor
     transaction.objectStore('unsent').delete(allOf(clientId)),
   ]
 
+  const expectWhole = async (transaction: Writing, { clientId, unsent }: SaveQueue): Promise<void> => {
+    if (await transaction.objectStore('unsent').count(allOf(clientId)) !== unsent.length) transaction.abort()
+  }
+
   return {
-    append: (queue, transactions) => write(transaction => put(transaction, queue, transactions)),
+    append: (queue, transactions) => write(transaction => [...put(transaction, queue, transactions), expectWhole(transaction, queue)]),
     putHead: (queue, refused) => write(transaction => [transaction.objectStore('queues').put(headOf(queue, refused))]),
     acknowledge: (queue, through) => write(transaction => [
       ...put(transaction, queue, []),
