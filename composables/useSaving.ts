@@ -2,9 +2,10 @@ import { onScopeDispose, shallowRef } from 'vue'
 import { sessionPrefix } from '#shared/editor'
 import type { SaveStatus } from '#shared/editor/saving'
 import type { ArrangementDetail } from '#shared/schemas'
+import type { Score } from '#shared/score/types'
 import { useEditorStore } from '~/stores/editor'
 import { browserClock, connectBrowser } from './saving/browser'
-import { openWithUnsent } from './saving/opening'
+import { openWithUnsent, type Opened } from './saving/opening'
 import { holdPresence, isPresent } from './saving/presence'
 import { chosenTransaction, type Reading } from './saving/readings'
 import { createSaver, type Saver } from './saving/saver'
@@ -20,29 +21,29 @@ export function useSaving(arrangement: string, user: string) {
   const refused = shallowRef<readonly KeptQueue[]>([])
   const store = createUnsentStore(arrangement, user)
   const transport = createTransport(arrangement, (input, init) => fetch(input, init))
-  const endings: (() => void)[] = []
-  let saver: Saver | null = null
+  let session: { readonly saver: Saver, readonly end: () => Promise<void> } | null = null
+  let isLeft = false
+  /** The arrangement as it stands here; the editor may have turned to another by the time it is asked for. */
+  let score: Score | null = null
 
   async function fileOf(): Promise<string> {
     const { writeSaved } = await import('#shared/formats/saved')
-    return editor.score ? writeSaved(editor.score) : ''
+    return score ? writeSaved(score) : ''
   }
 
-  /** @throws OpeningFailed, or what `load` throws */
-  async function open(load: () => Promise<ArrangementDetail>): Promise<ArrangementDetail> {
-    const clientId = sessionPrefix(size => crypto.getRandomValues(new Uint8Array(size * 2)))
-    endings.push(holdPresence(clientId))
-    const opened = await openWithUnsent({ clientId, store, transport, load, isLive: isPresent })
+  function begin({ detail, queue, ...opened }: Opened, release: () => void): void {
+    score = opened.score
     editor.open(opened.score)
     readings.value = opened.readings
     refused.value = opened.refused
     let announce = (_revision: number) => {}
-    saver = createSaver({
-      queue: opened.queue, saved: opened.detail.score, store, transport, clock: browserClock,
+    const saver = createSaver({
+      queue, saved: detail.score, store, transport, clock: browserClock,
       onStatus: (next) => { status.value = next },
       onSaved: revision => announce(revision),
-      onRebased(score, aside) {
-        editor.replaceScore(score)
+      onRebased(rebased, aside) {
+        score = rebased
+        editor.replaceScore(rebased)
         readings.value = [...readings.value, ...aside]
       },
       copy: fileOf,
@@ -51,11 +52,39 @@ export function useSaving(arrangement: string, user: string) {
     announce = browser.announce
     const stopListening = editor.listen({
       changed(after, before, { label, edits }) {
-        if (edits?.length && after.score !== before.score) saver?.record({ label, edits })
+        score = after.score
+        if (edits?.length && after.score !== before.score) saver.record({ label, edits })
       },
     })
-    endings.push(stopListening, browser.end, saver.stop)
-    return opened.detail
+    session = {
+      saver,
+      async end() {
+        const kept = saver.leave()
+        stopListening()
+        browser.end()
+        saver.stop()
+        // Until then an opening that follows at once would read the work without its last write.
+        await kept
+        release()
+      },
+    }
+  }
+
+  /** When the page is left before the answer has come, nothing is put on the desk.
+   * @throws OpeningFailed, or what `load` throws */
+  async function open(load: () => Promise<ArrangementDetail>): Promise<ArrangementDetail> {
+    const clientId = sessionPrefix(size => crypto.getRandomValues(new Uint8Array(size * 2)))
+    const release = holdPresence(clientId)
+    try {
+      const opened = await openWithUnsent({ clientId, store, transport, load, isLive: isPresent, isLeft: () => isLeft })
+      if (isLeft) release()
+      else begin(opened, release)
+      return opened.detail
+    }
+    catch (error) {
+      release()
+      throw error
+    }
   }
 
   /** Takes one of two readings of a place; the other goes. Choosing one's own is an edit like any other, and can be undone. */
@@ -72,9 +101,20 @@ export function useSaving(arrangement: string, user: string) {
     await store.dropQueue(clientId)
   }
 
+  /** A person asks for it, so that what comes of it is said, also where the header then says what it said before. */
+  async function saveNow(): Promise<void> {
+    const wasRefused = status.value.hindrance?.kind === 'refused'
+    if (wasRefused) editor.say('Asking the server once more …')
+    await session?.saver.now()
+    if (!wasRefused || isLeft) return
+    const { hindrance, unsent } = status.value
+    if (hindrance?.kind === 'refused') editor.say(`Still not saved: ${hindrance.reason}`)
+    else editor.say(unsent ? '' : 'The server has taken it.')
+  }
+
   onScopeDispose(() => {
-    saver?.leave()
-    for (const end of endings) end()
+    isLeft = true
+    void session?.end()
   })
-  return { status, readings, refused, open, choose, discard, fileOf, saveNow: () => saver?.now() ?? Promise.resolve() }
+  return { status, readings, refused, open, choose, discard, fileOf, saveNow }
 }

@@ -1,4 +1,5 @@
-import type { Clock, Saver } from './saver'
+import type { Clock } from './clock'
+import type { Saver } from './saver'
 
 /** Within this time (ms) what waits for a quiet moment is done, also in a tab behind others, which draws no frame. */
 const LATEST = 200
@@ -29,7 +30,7 @@ export function connectBrowser(arrangement: string, saver: Saver): { readonly an
   const on = (target: EventTarget, name: string, call: () => void) => target.addEventListener(name, call, { signal: ends.signal })
   on(window, 'online', () => saver.network(true))
   on(window, 'offline', () => saver.network(false))
-  on(window, 'pagehide', () => saver.leave())
+  on(window, 'pagehide', () => void saver.leave())
   on(window, 'pageshow', () => void saver.now())
   on(document, 'visibilitychange', () => void (document.visibilityState === 'hidden' ? saver.now() : saver.catchUp()))
   const channel = typeof BroadcastChannel === 'undefined' ? null : new BroadcastChannel(`copperwound-saved-${arrangement}`)

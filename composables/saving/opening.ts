@@ -13,6 +13,8 @@ export interface OpenOptions {
   readonly load: () => Promise<ArrangementDetail>
   /** Whether the tab of this client is still open: its queue is its own affair. */
   readonly isLive: (clientId: string) => Promise<boolean>
+  /** Whether the page that opens was left meanwhile: what closed tabs have left is then another opening's. */
+  readonly isLeft: () => boolean
 }
 
 export interface Opened {
@@ -75,7 +77,7 @@ export async function openWithUnsent(options: OpenOptions): Promise<Opened> {
   const rebased = rebaseOnto(detail.score, mine)
   const queue = rebaseQueue(emptyQueue(clientId, detail.revision), detail.revision, rebased.transactions)
   const aside = readingsOf(rebased.conflicts, `${clientId}-${detail.revision}`)
-  if (found.length) await store.replace(queue, found.map(each => each.clientId), aside)
+  if (found.length && !options.isLeft()) await store.replace(queue, found.map(each => each.clientId), aside)
   const readings = await store.readings().catch(() => aside)
   return { detail, score: rebased.score, queue, readings, refused: left.filter(each => each.refused), recovered: mine.length }
 }

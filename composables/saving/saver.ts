@@ -1,26 +1,16 @@
 import { applyEdits, isRefused } from '#shared/edits'
 import {
-  acknowledge, batchOf, enqueue, fittingCount, isPassing, rebaseQueue, retryDelay, sendTime, startSending,
-  type Hindrance, type LoggedTransaction, type SaveQueue, type SaveStatus, type Unsent,
+  acknowledge, batchOf, enqueue, fittingCount, isPassing, rebaseQueue, retryDelay, sendTime, startSending, withdraw,
+  type Hindrance, type LoggedTransaction, type SaveQueue, type SaveStatus,
 } from '#shared/editor/saving'
 import { rebaseOnto } from '#shared/editor/rebase'
 import type { LoggedBatch } from '#shared/schemas'
 import type { Score } from '#shared/score/types'
+import type { Clock } from './clock'
+import { createKeeping } from './keeping'
 import { readingsOf, type Reading } from './readings'
 import type { Failure, PostAnswer, Transport } from './transport'
-import type { UnsentStore } from './unsentStore'
-
-/** Time as saving sees it, so that tests never sleep. */
-export interface Clock {
-  /** Milliseconds. */
-  readonly now: () => number
-  /** Calls back after `ms`; the answer takes it back. */
-  readonly after: (ms: number, call: () => void) => () => void
-  /** From 0 up to 1. */
-  readonly random: () => number
-  /** Calls back soon, when the frame in hand is on the screen and nothing more pressing is to be done. */
-  readonly afterPaint: (call: () => void) => void
-}
+import type { RefusedCopy, UnsentStore } from './unsentStore'
 
 export interface SaverOptions {
   readonly queue: SaveQueue
@@ -40,19 +30,18 @@ export interface SaverOptions {
 
 export interface Saver {
   record: (transaction: LoggedTransaction) => void
-  /** Sends what there is without waiting for a pause or the next try; also after a person has seen to what hindered it. */
+  /** Sends what there is without waiting for a pause or the next try; also after a person has seen to what hindered it. What the server has refused is tried once more. */
   now: () => Promise<void>
   /** Fetches what others saved meanwhile. */
   catchUp: () => Promise<void>
   /** The network went or came, as the browser says. */
   network: (online: boolean) => void
-  /** The page is being closed or hidden: what fits goes out in a request that outlives it. */
-  leave: () => void
+  /** The page is being closed or left: what fits goes out in a request that outlives it. The answer comes when all is kept on the device. */
+  leave: () => Promise<unknown>
+  /** Ends the saver. The work is the next opening's from now on: answers that are still on their way change nothing, on the page or on the device. */
   stop: () => void
 }
 
-/** A write to the browser's database that takes longer than this (ms) does not hold up the sending. */
-const WRITE_PATIENCE = 1000
 /** Browsers take 64 KiB from a page that is closing (Fetch standard, keepalive); the rest is for the frame around it. */
 const LEAVING_BYTES = 60_000
 
@@ -62,10 +51,9 @@ const LEAVING_BYTES = 60_000
  */
 export function createSaver(options: SaverOptions): Saver {
   const { store, transport, clock } = options
+  const keeping = createKeeping(store, clock, () => publish())
   let { queue, saved } = options
-  let unwritten: readonly Unsent[] = []
-  let writes: Promise<unknown> = Promise.resolve()
-  let kept = true
+  let stopped = false
   let busy = false
   let failures = 0
   let hindrance: Hindrance | null = null
@@ -76,8 +64,9 @@ export function createSaver(options: SaverOptions): Saver {
   let shown = ''
 
   function publish(): void {
+    const { isKept: kept, isDue } = keeping
     // Edits are not said to be kept before they are: the write that is due publishes.
-    if (hindrance && kept && unwritten.length) return
+    if (stopped || (hindrance && kept && isDue)) return
     // While all goes well the count is nobody's concern, and every key would redraw the header.
     const { length } = queue.unsent
     const status: SaveStatus = { unsent: hindrance || !kept ? length : Math.min(1, length), kept, hindrance, savedAt }
@@ -86,23 +75,8 @@ export function createSaver(options: SaverOptions): Saver {
     shown = text
   }
 
-  /** Writes go in the order of the calls; the header learns whether they were kept. */
-  function keep(write: () => Promise<unknown>): Promise<unknown> {
-    writes = writes.then(write).then(() => true, () => false).then((done) => {
-      kept = done
-      publish()
-    })
-    return Promise.race([writes, new Promise<void>(resolve => void clock.after(WRITE_PATIENCE, resolve))])
-  }
-
-  function keepQueue(): Promise<unknown> {
-    const [head, transactions] = [queue, unwritten]
-    unwritten = []
-    return keep(async () => {
-      await store.append(head, transactions)
-      if (hindrance?.kind === 'refused') await store.putHead(head, { reason: hindrance.reason, at: clock.now(), copy: await options.copy() })
-    })
-  }
+  const refusedCopy = (reason: string) => async (): Promise<RefusedCopy> => ({ reason, at: clock.now(), copy: await options.copy() })
+  const keepQueue = (): Promise<unknown> => keeping.append(queue, hindrance?.kind === 'refused' ? refusedCopy(hindrance.reason) : undefined)
 
   function schedule(ms: number): void {
     cancelTimer()
@@ -111,20 +85,24 @@ export function createSaver(options: SaverOptions): Saver {
 
   /** The next sending: after the pause, or when the next try after a failure is due, which typing does not bring forward. */
   function scheduleNext(): void {
-    if (busy || failures || !isPassing(hindrance) || oldest === null) return
+    if (stopped || busy || failures || !isPassing(hindrance) || oldest === null) return
     schedule(sendTime(oldest, newest) - clock.now())
   }
 
-  async function send(): Promise<void> {
-    if (busy || !isPassing(hindrance) || !queue.unsent.length) return
+  /** @param again what the server has refused, too */
+  async function send(again = false): Promise<void> {
+    if (stopped || busy || !queue.unsent.length || !(again || isPassing(hindrance))) return
     cancelTimer()
     busy = true
+    if (hindrance?.kind === 'refused') queue = withdraw(queue)
     queue = startSending(queue)
     publish()
     await keepQueue()
     const batch = batchOf(queue)
-    if (batch) settle(await transport.post(batch).catch((): Failure => ({ kind: 'unreachable' })))
+    const answer = batch && !stopped && await transport.post(batch).catch((): Failure => ({ kind: 'unreachable' }))
     busy = false
+    if (stopped) return
+    if (answer) settle(answer)
     publish()
     scheduleNext()
   }
@@ -146,8 +124,7 @@ export function createSaver(options: SaverOptions): Saver {
     hindrance = null
     savedAt = clock.now()
     oldest = queue.unsent.length ? clock.now() : null
-    const head = queue
-    void keep(() => store.acknowledge(head, sent.at(-1)?.number ?? 0))
+    void keeping.acknowledge(queue, sent.at(-1)?.number ?? 0)
     options.onSaved(revision)
   }
 
@@ -159,12 +136,10 @@ export function createSaver(options: SaverOptions): Saver {
     const readings = readingsOf(rebased.conflicts, `${queue.clientId}-${revision}`)
     saved = theirs.score
     queue = rebaseQueue(queue, revision, rebased.transactions)
-    unwritten = []
     hindrance = null
     failures = 0
     oldest = queue.unsent.length ? newest : null
-    const head = queue
-    void keep(() => store.replace(head, [], readings))
+    void keeping.replace(queue, readings)
     options.onRebased(rebased.score, readings)
   }
 
@@ -183,12 +158,13 @@ export function createSaver(options: SaverOptions): Saver {
     void keepQueue()
   }
 
-  function retry(): Promise<void> {
+  async function retry(): Promise<void> {
+    if (stopped) return
     const done = hindrance?.kind === 'offline' ? !queue.unsent.length : !isPassing(hindrance) && hindrance?.kind !== 'refused'
     if (done) hindrance = null
     failures = 0
     publish()
-    return send()
+    await send(true)
   }
 
   publish()
@@ -197,22 +173,24 @@ export function createSaver(options: SaverOptions): Saver {
   return {
     record(transaction) {
       queue = enqueue(queue, transaction)
+      const isFirst = !keeping.isDue
       const added = queue.unsent.at(-1)
-      if (added) unwritten = [...unwritten, added]
+      if (added) keeping.add(added)
       newest = clock.now()
       oldest ??= newest
-      if (unwritten.length === 1) clock.afterPaint(() => void (unwritten.length && keepQueue()))
+      if (isFirst) clock.afterPaint(() => void (!stopped && keeping.isDue && keepQueue()))
       publish()
       scheduleNext()
     },
     now: retry,
     async catchUp() {
       // A batch without an answer may be among what the server has: its own retry clears that up first.
-      if (busy || queue.sending || !isPassing(hindrance)) return
+      if (stopped || busy || queue.sending || !isPassing(hindrance)) return
       busy = true
       const answer = await transport.since(queue.base).catch((): Failure => ({ kind: 'unreachable' }))
-      if (answer.kind === 'since' && answer.batches.length && !queue.sending) takeMissed(answer.revision, answer.batches)
       busy = false
+      if (stopped) return
+      if (answer.kind === 'since' && answer.batches.length && !queue.sending) takeMissed(answer.revision, answer.batches)
       publish()
       scheduleNext()
     },
@@ -222,14 +200,20 @@ export function createSaver(options: SaverOptions): Saver {
       publish()
     },
     leave() {
-      if (!isPassing(hindrance) || !queue.unsent.length) return
-      const before = queue
-      queue = startSending(queue, fittingCount(queue.unsent, LEAVING_BYTES))
-      if (queue.sending?.count === 0) queue = before
-      void keepQueue()
-      const batch = batchOf(queue)
+      if (stopped) return keeping.settled()
+      const isSending = isPassing(hindrance) && queue.unsent.length > 0
+      if (isSending) {
+        const started = startSending(queue, fittingCount(queue.unsent, LEAVING_BYTES))
+        if (started.sending?.count) queue = started
+      }
+      if (isSending || keeping.isDue) void keepQueue()
+      const batch = isSending ? batchOf(queue) : null
       if (batch && fittingCount(queue.unsent.slice(0, queue.sending?.count), LEAVING_BYTES) === queue.sending?.count) void transport.post(batch, true).catch(() => null)
+      return keeping.settled()
     },
-    stop: () => cancelTimer(),
+    stop() {
+      stopped = true
+      cancelTimer()
+    },
   }
 }

@@ -68,6 +68,9 @@ export const acknowledge = (queue: SaveQueue, revision: number): SaveQueue => ({
   ...queue, base: revision, sending: null, unsent: queue.unsent.slice(queue.sending?.count ?? 0),
 })
 
+/** The server has refused the batch on its way: what is in it goes again under a number of its own, with what was done since. */
+export const withdraw = (queue: SaveQueue): SaveQueue => ({ ...queue, sending: null })
+
 /** The server has answered that the batch on its way was not applied; these transactions follow `revision` instead. */
 export const rebaseQueue = (queue: SaveQueue, revision: number, transactions: readonly LoggedTransaction[]): SaveQueue =>
   transactions.reduce(enqueue, { ...queue, base: revision, sending: null, unsent: [] })

@@ -1,4 +1,4 @@
-import type { Clock } from '../../../composables/saving/saver'
+import type { Clock } from '../../../composables/saving/clock'
 import type { Failure, PostAnswer, SinceAnswer, Transport } from '../../../composables/saving/transport'
 import { applyEdits, isRefused } from '../../../shared/edits'
 import type { Batch, LoggedTransaction } from '../../../shared/editor/saving'
@@ -48,6 +48,7 @@ export function memoryServer(start: Score) {
   const posts: Batch[] = []
   let outage: Failure | null = null
   let losesAnswer = false
+  let answering: Promise<void> = Promise.resolve()
 
   function take(batch: Batch): PostAnswer {
     const known = log.find(each => each.clientId === batch.clientId && each.seq === batch.seq)
@@ -64,9 +65,14 @@ export function memoryServer(start: Score) {
       posts.push(batch)
       if (outage) return outage
       const answer = take(structuredClone(batch))
+      await answering
       return losesAnswer ? { kind: 'unreachable' } : answer
     },
-    since: async (revision): Promise<SinceAnswer> => outage ?? { kind: 'since', revision: log.length, batches: log.slice(revision) },
+    async since(revision): Promise<SinceAnswer> {
+      const answer = { kind: 'since' as const, revision: log.length, batches: log.slice(revision) }
+      await answering
+      return outage ?? answer
+    },
   }
   return {
     transport, posts, log, take,
@@ -74,6 +80,12 @@ export function memoryServer(start: Score) {
     get revision() { return log.length },
     fail: (failure: Failure | null) => void (outage = failure),
     loseAnswers: (loses: boolean) => void (losesAnswer = loses),
+    /** Answers are on their way until the call that this gives back. */
+    holdAnswers() {
+      let letGo = () => {}
+      answering = new Promise(resolve => (letGo = resolve))
+      return letGo
+    },
   }
 }
 
