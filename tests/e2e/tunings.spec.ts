@@ -76,7 +76,7 @@ test('the catalogue is filtered, and two charts are set side by side', async ({ 
   await page.getByLabel('Compare Orkney').check()
   await page.getByRole('link', { name: 'Compare the two' }).click()
   await expect(page.getByRole('heading', { level: 2 })).toHaveText(['E A D G B E', 'C G D G C D'])
-  await expect(page.getByText('three strings down, one up a half step, two as they were')).toBeVisible()
+  await expect(page.getByRole('region', { name: 'From the first to the second' })).toContainText('three strings down, one up a half step, two as they were')
   const sides = page.getByRole('region', { name: /^(First|Second) tuning$/ })
   const [left, right] = [await sides.nth(0).boundingBox(), await sides.nth(1).boundingBox()]
   expect(left!.x + left!.width).toBeLessThanOrEqual(right!.x)
@@ -173,7 +173,7 @@ test('tunings are ranked for a tune; it can be cancelled, and mistakes are named
   await page.getByText('Its own', { exact: true }).click()
   await page.getByLabel('Capo').selectOption('No capo')
   await page.getByRole('button', { name: 'Rank the tunings' }).click()
-  await expect(page.getByText(/^The best \d+, found in/)).toBeVisible()
+  await expect(page.getByText(/The best \d+, found in/)).toBeVisible()
   const best = page.getByRole('listitem').filter({ hasText: '100 percent of the melody lies on open strings: G3, B3 and D4' })
   await expect(best.first()).toContainText('G major, at the pitch typed')
   await best.first().getByRole('link').click()
@@ -187,7 +187,7 @@ test('a tuning is kept under a name of one’s own, changed, deleted and brought
   await visit(page, '/tunings/b1-fs2-cs3-fs3-b3-cs4')
   const name = `Skerry ${Date.now().toString(36)}`
   await page.getByRole('button', { name: 'Keep it…' }).click()
-  await page.getByLabel('Name').fill(name)
+  await page.getByLabel('Name', { exact: true }).fill(name)
   await page.getByLabel('Notes').fill('For the slow air')
   await page.getByRole('dialog').getByRole('button', { name: 'Keep it' }).click()
   await expect(page.getByRole('dialog')).toHaveCount(0)
@@ -196,7 +196,7 @@ test('a tuning is kept under a name of one’s own, changed, deleted and brought
   const row = page.getByRole('region', { name: 'My tunings' }).getByRole('listitem').filter({ hasText: name })
   await expect(row).toContainText('For the slow air')
   await row.getByRole('button', { name: /Change/ }).click()
-  await page.getByLabel('Name').fill(`${name} two`)
+  await page.getByLabel('Name', { exact: true }).fill(`${name} two`)
   await page.getByRole('dialog').getByRole('button', { name: 'Keep it' }).click()
   await expect(row).toContainText(`${name} two`)
   await row.getByRole('button', { name: /Delete/ }).click()
@@ -215,19 +215,22 @@ test('a chart leads to a new arrangement in its tuning', async ({ page }) => {
 })
 
 /** WCAG 2.2 A and AA (https://github.com/dequelabs/axe-core/blob/develop/doc/rule-descriptions.md), and 1.4.10 Reflow. */
-for (const [device, viewport] of [['desk', { width: 1440, height: 900 }], ['phone', { width: 390, height: 844 }]] as const) {
-  for (const colorScheme of ['light', 'dark'] as const) {
-    test.describe(`${device}, ${colorScheme}`, () => {
-      test.use({ viewport, colorScheme, contextOptions: { reducedMotion: 'reduce' } })
-      test('every tunings page is fit for all', async ({ page }) => {
-        for (const path of ['/tunings', `${chart}?capo=2&partial=4on3-4-5`, '/tunings/fs1-b1-e2-a2-d3-g3-b3-e4', '/tunings/for-a-tune',
-          '/tunings/compare?a=e2-b2-e3-gs3-b3-e4&b=g4-d3-g3-b3-d4', '/tunings/e2-a2-d3']) {
-          await visit(page, path)
-          const { violations } = await new AxeBuilder({ page }).withTags(['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice']).analyze()
-          expect(violations.map(({ id, nodes }) => `${path} ${id}: ${nodes.map(({ target }) => target.join(' ')).join(', ')}`)).toEqual([])
-          expect(await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth), `${path} is wider than its window`).toBeLessThanOrEqual(0)
-        }
+const everywhere = [`${chart}?capo=2&partial=4on3-4-5`]
+const twice = ['/tunings', '/tunings/fs1-b1-e2-a2-d3-g3-b3-e4', '/tunings/for-a-tune', '/tunings/compare?a=e2-b2-e3-gs3-b3-e4&b=g4-d3-g3-b3-d4', '/tunings/e2-a2-d3']
+const [desk, phone] = [{ width: 1440, height: 900 }, { width: 390, height: 844 }]
+for (const { viewport, colorScheme, paths } of [
+  { viewport: desk, colorScheme: 'light', paths: [...everywhere, ...twice] }, { viewport: desk, colorScheme: 'dark', paths: everywhere },
+  { viewport: phone, colorScheme: 'light', paths: everywhere }, { viewport: phone, colorScheme: 'dark', paths: [...everywhere, ...twice] },
+] as const) {
+  test.describe(`${viewport.width} pixels wide, ${colorScheme}`, () => {
+    test.use({ viewport, colorScheme, contextOptions: { reducedMotion: 'reduce' } })
+    for (const path of paths) {
+      test(`${path} is fit for all`, async ({ page }) => {
+        await visit(page, path)
+        const { violations } = await new AxeBuilder({ page }).withTags(['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice']).analyze()
+        expect(violations.map(({ id, nodes }) => `${id}: ${nodes.map(({ target }) => target.join(' ')).join(', ')}`)).toEqual([])
+        expect(await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth), 'wider than its window').toBeLessThanOrEqual(0)
       })
-    })
-  }
+    }
+  })
 }
