@@ -44,7 +44,8 @@ function applyAll(score: Score, transactions: readonly LoggedTransaction[]): Sco
 async function append(tx: Db, save: Save, current: number): Promise<Written> {
   const { arrangementId, authorId, clientId, seq, transactions } = save
   const next = applyAll(await scoreAt(tx, arrangementId, current), transactions)
-  if (typeof next === 'string') return { result: { kind: 'refused', message: next } }
+  // What was saved already does not fit again: a retry that names the present revision as its base is a retry all the same.
+  if (typeof next === 'string') return { result: await earlier(tx, save) ?? { kind: 'refused', message: next } }
   const revision = current + 1
   const added = await tx.insert(revisions).values({ arrangementId, revision, clientId, seq, authorId, transactions }).onConflictDoNothing().returning({ revision: revisions.revision })
   // The row is locked, so that only this client's number can stand in the way.

@@ -26,7 +26,7 @@ function initial(head: Head): Context {
 const REMEMBERED = 8
 
 /**
- * The context inside `bar`. Equal changes behind an equal context give the very same object, so that drawings can compare by
+ * The context inside `bar`. The same changes behind the same context give the very same object, so that drawings can compare by
  * identity: notes typed in a bar which states a meter leave the contexts of all bars behind it as they were.
  */
 function step(before: Context, bar: Bar): Context {

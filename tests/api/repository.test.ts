@@ -93,6 +93,7 @@ describe.each(databases)('on $name', ({ there, open }) => {
         await saveEdits(db(), first)
         await saveEdits(db(), save(id, 8, 1, [{ kind: 'patchHead', before: { title: 'Two herons' }, after: { title: 'Three herons' } }]))
         expect(await saveEdits(db(), first)).toEqual({ kind: 'saved', revision: 1, repeated: true })
+        expect(await saveEdits(db(), { ...first, base: 2 }), 'on the newest base as well').toEqual({ kind: 'saved', revision: 1, repeated: true })
         expect((await readArrangement(db(), id)).revision).toBe(2)
       })
 
