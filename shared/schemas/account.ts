@@ -15,7 +15,6 @@ export const resetSchema = z.strictObject({ token: tokenSchema, password: passwo
 export const changePasswordSchema = z.strictObject({ current: z.string().max(PASSWORD_LENGTH.most), password: passwordSchema })
 
 export type Register = z.infer<typeof registerSchema>
-export type SignIn = z.infer<typeof signInSchema>
 
 /** The person signed in, as the session carries it to the browser. */
 export interface SessionUser { readonly id: string, readonly name: string, readonly email: string, readonly role: AccountRole }
