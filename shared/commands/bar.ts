@@ -4,7 +4,7 @@ import { contextOf } from '../score/context'
 import { isEqual } from '../score/equal'
 import { compare, equals, max, ZERO } from '../score/fraction'
 import { barLength, voiceTotal } from '../score/time'
-import { VOICE_NAMES, type Bar, type Key, type Meter, type ScoreEvent, type Tempo } from '../score/types'
+import { VOICE_NAMES, type Bar, type Score, type ScoreEvent } from '../score/types'
 import { replaceVoice } from './change'
 import { scoreCommand, type Command } from './command'
 import { keepingContexts } from './contexts'
@@ -18,16 +18,9 @@ export function patchBar(bar: Bar, after: BarPatch, label: string): Transaction 
 
 const barHere = ({ score, selection }: EditorState): Bar => placeOf(score, selection.cursor).bar
 
-/** A statement that holds from the cursor's bar on; a bar after the first that says what holds anyway says nothing. */
-function state<F extends 'meter' | 'key' | 'tempo'>(editor: EditorState, field: F, value: Required<Bar>[F], label: string): Transaction | null {
-  const { index, bar } = placeOf(editor.score, editor.selection.cursor)
-  const inherited = index > 0 && isEqual(contextOf(editor.score, index - 1)[field], value)
-  return patchBar(bar, { [field]: inherited ? null : value }, label)
-}
-
-export const setMeter = (editor: EditorState, meter: Meter): Transaction | null => state(editor, 'meter', meter, `Meter ${meter.beats}/${meter.unit}`)
-export const setKey = (editor: EditorState, key: Key): Transaction | null => state(editor, 'key', key, 'Set the key')
-export const setTempo = (editor: EditorState, tempo: Tempo): Transaction | null => state(editor, 'tempo', tempo, `Tempo ${tempo.perMinute}`)
+/** What the bar at `index` has to state for a meter, key or tempo to hold from it on: null, nothing, where it holds anyway. */
+export const statement = <F extends 'meter' | 'key' | 'tempo'>(score: Score, index: number, field: F, value: Required<Bar>[F]): Required<Bar>[F] | null =>
+  (index > 0 && isEqual(contextOf(score, index - 1)[field], value) ? null : value)
 
 const at = (bar: Bar, { voice, string }: Cursor): Selection => ({ cursor: cursorAt(bar, voice, 0, string), anchor: null })
 

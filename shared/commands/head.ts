@@ -12,9 +12,6 @@ export function setHead({ score }: EditorState, patch: HeadPatch, label: string)
   return { label, edits: [{ kind: 'patchHead', before: pick(score.head), after: pick(patch) }] }
 }
 
-export const setDetails = (state: EditorState, details: Partial<Pick<Head, 'title' | 'composer' | 'arranger' | 'rights' | 'source'>>): Transaction | null =>
-  setHead(state, details, 'Change title or people')
-
 /** Frets stay as they are: the sound changes. */
 export const setTuning = (state: EditorState, strings: Head['strings']): Transaction | null => setHead(state, { strings }, 'Change the tuning')
 export const setCapos = (state: EditorState, capos: Head['capos']): Transaction | null => setHead(state, { capos }, 'Set capos')

@@ -1,5 +1,6 @@
+import { statement } from '#shared/commands/bar'
 import type { BarPatch } from '#shared/edits'
-import { contextOf, type Context } from '#shared/score/context'
+import { contextOf } from '#shared/score/context'
 import { isEqual } from '#shared/score/equal'
 import { fraction, type Fraction } from '#shared/score/fraction'
 import type { Base, Bar, Key, Meter, Score, Tempo } from '#shared/score/types'
@@ -44,26 +45,22 @@ export function barForm(score: Score, index: number): BarForm {
   }
 }
 
-/** What the bar would have to state for the form to hold: a bar behind the first says nothing that holds anyway. Only what changes is named. */
+/** What the bar would have to state for the form to hold. Only what changes is named. */
 export function barPatch(score: Score, index: number, form: BarForm): BarPatch {
   const bar = score.bars[index]
   if (!bar) return {}
-  const before = index > 0 ? contextOf(score, index - 1) : null
   const tempo: Tempo = { base: Number(form.beat.replaceAll('.', '')) as Base, dots: form.beat.split('.').length - 1, perMinute: Number(form.perMinute) }
   const times = Number(form.times)
   const wanted: { readonly [field in keyof BarPatch]: BarPatch[field] } = {
-    meter: stated(before, 'meter', readMeter(form.meter)),
-    key: stated(before, 'key', readKey(form.key)),
-    tempo: stated(before, 'tempo', tempo),
+    meter: statement(score, index, 'meter', readMeter(form.meter)),
+    key: statement(score, index, 'key', readKey(form.key)),
+    tempo: statement(score, index, 'tempo', tempo),
     length: form.length ? fraction(...pair(form.length)) : null,
     repeatStart: form.repeatStart ? true : null,
     repeatEnd: times >= 2 ? times : null,
   }
   return Object.fromEntries(Object.entries(wanted).filter(([field, value]) => !isEqual(bar[field as keyof Bar] ?? null, value)))
 }
-
-const stated = <F extends 'meter' | 'key' | 'tempo'>(before: Context | null, field: F, value: Context[F]): Context[F] | null =>
-  (before && isEqual(before[field], value) ? null : value)
 
 /** One sentence for each field that can't be. */
 export function barChecks(form: BarForm): Readonly<Partial<Record<keyof BarForm, string>>> {
