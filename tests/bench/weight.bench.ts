@@ -27,6 +27,7 @@ test('script sent for each page', async ({ browser }) => {
     await context.close()
   }
   await measure('landing', page => page.goto('/'))
+  await measure('tuning', page => page.goto('/tunings/c2-g2-d3-g3-c4-d4'))
   await measure('folio', page => page.goto('/folio'))
   await measure('desk', async page => openDesk(page, await keepScore(page.request, denseScore(16))))
   console.log(`\n${rows.join('\n')}`)
