@@ -75,6 +75,7 @@ export interface CursorDescription {
   /** "Bar 2", as printed; "Pickup" */
   readonly bar: string
   readonly bars: number
+  /** "beat 2½"; behind the last beat "end" */
   readonly beat: string
   readonly string: number
   /** The string's open pitch as it sounds now, capo on: "D2". */
@@ -96,10 +97,12 @@ export function describeCursor({ score, selection, entry }: EditorState): Cursor
   const { cursor } = selection
   const { index, bar, context, voice, at, event, note } = placeOf(score, cursor)
   const fifths = soundingFifths(context.key, score.head)
+  const moment = momentOf(voice, at)
+  const isPast = !event && compare(moment, barLength(bar, context.meter)) >= 0
   return {
     bar: barLabel(score, index),
     bars: score.bars.length,
-    beat: beatLabel(add(missingBefore(score, index, context.meter), momentOf(voice, at)), context.meter),
+    beat: isPast ? 'end' : `beat ${beatLabel(add(missingBefore(score, index, context.meter), moment), context.meter)}`,
     string: cursor.string,
     open: soundingLabel(score.head, { string: cursor.string, fret: 0 }, fifths),
     fret: note?.fret ?? null,
@@ -121,7 +124,7 @@ export function cursorSentence(state: EditorState): string {
     rest: `Rest, ${length}, string ${string}`,
     end: `End of the voice, string ${string}, ${open}, ${length} next`,
   }[at]
-  return [what, `${bar}, beat ${beat}, ${voice}`, fill].filter(Boolean).join('. ') + '.'
+  return [what, `${bar}, ${beat}, ${voice}`, fill].filter(Boolean).join('. ') + '.'
 }
 
 /** "2 sharps", "1 flat", "no sharps or flats" */

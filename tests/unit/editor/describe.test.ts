@@ -11,7 +11,7 @@ const OPEN_G = { strings: ['D4', 'B3', 'G3', 'D3', 'G2', 'D2'].map(pitch => ({ p
 describe('the cursor in words', () => {
   it('says where it is, what sounds there and how long it is written', () => {
     expect(describeCursor(parseState('{6/8} 3/0q 3/0e 3/0q 3/0e | 3/0e ^3/4q.', OPEN_G))).toEqual({
-      bar: 'Bar 2', bars: 2, beat: '1⅓', string: 3, open: 'G3', fret: 4, pitch: 'B3', marks: [], voice: 'upper voice',
+      bar: 'Bar 2', bars: 2, beat: 'beat 1⅓', string: 3, open: 'G3', fret: 4, pitch: 'B3', marks: [], voice: 'upper voice',
       length: 'dotted quarter', at: 'note', fill: 'This bar is a quarter short',
     })
   })
@@ -21,6 +21,8 @@ describe('the cursor in words', () => {
     ['3/0h ^2:3/0h', 'String 2, B3, nothing here, half. Bar 1, beat 3, upper voice.'],
     ['3/0h. ^6:zq', 'Rest, quarter, string 6. Bar 1, beat 4, upper voice.'],
     ['3/0w ; 6/0h. ^4:e', 'End of the voice, string 4, D3, eighth next. Bar 1, beat 4, lower voice. This bar is a quarter short.'],
+    ['3/0w ^3:q', 'End of the voice, string 3, G3, quarter next. Bar 1, end, upper voice.'],
+    ['3/0w ^3/2q', 'String 3, fret 2, A3, quarter. Bar 1, beat 5, upper voice. This bar is over by a quarter.'],
     ['^3/0xhw', 'String 3, fret 0, dead note, hammer-on, whole. Bar 1, beat 1, upper voice.'],
     ['^3/12<lw', 'String 3, fret 12, G4, harmonic, partial 2, let ring, whole. Bar 1, beat 1, upper voice.'],
   ])('%s: %s', (text, sentence) => expect(cursorSentence(parseState(text))).toBe(sentence))
