@@ -1,6 +1,4 @@
-import { mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
-import { join } from 'node:path'
+import { writeFileSync } from 'node:fs'
 import AxeBuilder from '@axe-core/playwright'
 import { chromium, expect, test, type Browser, type Page } from '@playwright/test'
 import { PitchDetector } from 'pitchy'
@@ -14,7 +12,6 @@ declare global { interface Window { tunerSeen: Seen } }
 
 const RATE = 48_000
 const BEFORE = 0.7
-const folder = mkdtempSync(join(tmpdir(), 'copperwound-tuner-'))
 
 /** A WAVE file of 16-bit mono PCM (IBM and Microsoft, Multimedia Programming Interface and Data Specifications 1.0, 1991). */
 function wave(name: string, samples: Float32Array): string {
@@ -32,7 +29,7 @@ function wave(name: string, samples: Float32Array): string {
   file.write('data', 36)
   file.writeUInt32LE(2 * samples.length, 40)
   samples.forEach((value, index) => file.writeInt16LE(Math.round(32_767 * Math.max(-1, Math.min(1, value))), 44 + 2 * index))
-  const path = join(folder, `${name}.wav`)
+  const path = test.info().outputPath(`${name}.wav`)
   writeFileSync(path, file)
   return path
 }

@@ -21,10 +21,14 @@ const HIGHEST_PARTIAL = 6000
 const CLEAR = 0.6
 /** Root mean square below which a microphone hears its own noise, full scale 1. */
 const SILENT = 0.0004
-/** Partials between those of a pitch at least this strong, against its strongest, make it the octave below: 34 dB; 43 dB where that is
- * the string sought. */
-const BETWEEN = 4e-4
-const BETWEEN_WHEN_SOUGHT = 5e-5
+/**
+ * Power of the partials between those of a pitch, against its strongest, which make it an overtone of a lower string. The lower string
+ * may be the one sought, heard by a poor microphone (43 dB suffice); or the pitch itself may be sought, while lower strings still ring
+ * (14 dB are needed); else in between (24 dB). Ours.
+ */
+const BETWEEN = { baseIsSought: 5e-5, pitchIsSought: 0.04, neither: 0.004 } as const
+/** The lowest of them alone is enough at this strength: when a string has nearly died away the others are gone. */
+const LONE = 0.01
 /** And this far above the noise, since one chance in a thousand frames would be an octave wrong. */
 const STANDS_OUT = 25
 
@@ -38,14 +42,15 @@ export const windowFor = (lowest: number, rate: number): number =>
 
 const loudness = (samples: Float32Array): number => Math.sqrt(samples.reduce((sum, value) => sum + value * value, 0) / samples.length)
 
-/** Whether a pitch is the second partial (or third) of a string whose own, odd ones are weak, as through a small microphone. */
-function isOvertone(ear: Ear, hertz: number, times: number, isSought: boolean): boolean {
+/** Whether a pitch is the second partial (or third) of a string whose own, odd ones are weak.
+ * @param between the power against the strongest that they need */
+function isOvertone(ear: Ear, hertz: number, times: number, between: number): boolean {
   const base = hertz / times
   const own = Math.max(...[1, 2, 3].map(number => ear.power(number * hertz)))
-  const noise = noiseBetween(ear, hertz)
-  const floor = Math.max(STANDS_OUT * noise, own * (isSought ? BETWEEN_WHEN_SOUGHT : BETWEEN))
+  const floor = Math.max(STANDS_OUT * noiseBetween(ear, hertz), own * between)
   const numbers = [1, 2, 3, 4, 5].filter(number => number % times !== 0).slice(0, 3)
-  return numbers.filter(number => standsAt(ear, number * base, base, floor)).length >= 2
+  const found = numbers.filter(number => standsAt(ear, number * base, base, floor))
+  return found.length >= 2 || (found.includes(1) && ear.power(base) > LONE * own)
 }
 
 /** A sine near a frequency, not only the foot of a stronger one beside it. */
@@ -72,10 +77,12 @@ export function detectPitch(samples: Float32Array, rate: number, sought?: number
   return { hertz: series.first, clarity: Math.min(1, period.clarity), stretch: series.stretch }
 }
 
+const isNear = (hertz: number, sought: number | undefined): boolean => sought !== undefined && Math.abs(Math.log2(hertz / sought)) < 0.3
+
 function ownPitch(ear: Ear, hertz: number, sought: number | undefined): number {
   const times = [2, 3].find((each) => {
-    const isSought = sought !== undefined && Math.abs(Math.log2(hertz / each / sought)) < 0.3
-    return hertz / each >= LOWEST && isOvertone(ear, hertz, each, isSought)
+    const evidence = isNear(hertz / each, sought) ? 'baseIsSought' : isNear(hertz, sought) ? 'pitchIsSought' : 'neither'
+    return hertz / each >= LOWEST && isOvertone(ear, hertz, each, BETWEEN[evidence])
   })
   return times ? hertz / times : hertz
 }

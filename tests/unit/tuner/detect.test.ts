@@ -78,6 +78,15 @@ describe('octaves', () => {
     }
   })
 
+  it.each(['C2', 'A2', 'F3', 'E4'])('%s is told though its octave, second partial, is ten times as strong as itself', (name) => {
+    const first = Note.freq(name)!
+    for (const sought of [first, 1.5 * first]) {
+      const { cents } = steady({ first, stretch: 0.0001, snr: 30, odd: 0.1 }, sought)
+      expect(cents.length).toBeGreaterThan(8)
+      expect(worst(cents)).toBeLessThan(2)
+    }
+  })
+
   it('hears a low string by its upper partials, where a microphone leaves almost nothing of the first', () => {
     const first = Note.freq('C2')!
     const { cents } = steady({ first, stretch: 0.0001, snr: 20, lowCut: 600 })
@@ -98,6 +107,23 @@ describe('out of tune', () => {
     const sound = pluck({ first: 146.5, rate: RATE, seconds: 0.6, stretch: 0 }).subarray(4800, 4800 + 8192)
     const [other] = PitchDetector.forFloat32Array(8192).findPitch(sound, RATE)
     expect(Math.abs(centsBetween(detectPitch(sound, RATE, 146.8)!.hertz, other))).toBeLessThan(1)
+  })
+})
+
+describe('other strings ringing along', () => {
+  it.each([['C2', ['G2', 'C4']], ['D3', ['D2', 'A3']], ['D4', ['G2', 'D3']]] as const)('do not draw %s away', (name, others) => {
+    const first = Note.freq(name)!
+    const all = { rate: RATE, seconds: 1.2, before: BEFORE, stretch: 0.0001 }
+    const sound = pluck({ ...all, first, snr: 20 })
+    // 24 dB softer, and some cents out of tune themselves.
+    for (const [index, other] of others.entries()) {
+      pluck({ ...all, first: Note.freq(other)! * 2 ** ((index ? 12 : -9) / 1200), level: 0.1 * 10 ** (-24 / 20), seed: 9 }).forEach((value, at) => {
+        sound[at]! += value
+      })
+    }
+    const shown = watch(sound, first).filter(({ followed }) => followed.pitch?.isSteady).map(({ followed }) => centsBetween(followed.pitch!.hertz, first))
+    expect(shown.length).toBeGreaterThan(8)
+    expect(worst(shown)).toBeLessThan(2)
   })
 })
 

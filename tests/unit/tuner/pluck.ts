@@ -15,6 +15,8 @@ export interface Pluck {
   readonly before?: number
   /** A small microphone hears little below this, hertz (second order). */
   readonly lowCut?: number
+  /** Amplitude left of the odd partials, as when a finger brushes the string's middle. */
+  readonly odd?: number
   /** Root mean square of the first half second. */
   readonly level?: number
 }
@@ -40,7 +42,7 @@ export const rms = (samples: Float32Array): number => Math.sqrt(samples.reduce((
  * force at the bridge: times n. */
 const amplitude = (n: number, place: number): number => Math.abs(Math.sin(n * Math.PI * place)) / n
 
-export function pluck({ first, rate, seconds, stretch, place = 0.17, snr, seed = 1, before = 0, lowCut = 0, level = 0.1 }: Pluck): Float32Array {
+export function pluck({ first, rate, seconds, stretch, place = 0.17, snr, seed = 1, before = 0, lowCut = 0, odd = 1, level = 0.1 }: Pluck): Float32Array {
   const next = random(seed)
   const length = Math.round((before + seconds) * rate)
   const start = Math.round(before * rate)
@@ -55,7 +57,7 @@ export function pluck({ first, rate, seconds, stretch, place = 0.17, snr, seed =
     const phase = 2 * Math.PI * next()
     const loss = Math.exp(-decay / rate)
     const [turnRe, turnIm] = [loss * Math.cos(2 * Math.PI * hertz / rate), loss * Math.sin(2 * Math.PI * hertz / rate)]
-    let [re, im] = [Math.cos(phase), Math.sin(phase)].map(value => value * cut * amplitude(n, place)) as [number, number]
+    let [re, im] = [Math.cos(phase), Math.sin(phase)].map(value => value * cut * (n % 2 ? odd : 1) * amplitude(n, place)) as [number, number]
     for (let i = start; i < length; i++) {
       sound[i]! += im;
       [re, im] = [re * turnRe - im * turnIm, re * turnIm + im * turnRe]
