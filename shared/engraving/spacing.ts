@@ -1,4 +1,4 @@
-import { compare, isLess, subtract, toNumber, type Fraction } from '../score/fraction'
+import { compare, fraction, isLess, subtract, toNumber, type Fraction } from '../score/fraction'
 import { GAP, HEAD_WIDTH, KEY_ACCIDENTAL_WIDTH, LEAD, MIN_BODY, TAIL, tabTextWidth } from './metrics'
 import type { Slice, StaffEvent, TabMark } from './types'
 
@@ -49,10 +49,17 @@ function rod(slices: readonly Slice[], index: number): number {
 
 const leading = (slices: readonly Slice[]): number => LEAD + (slices[0]?.left ?? 0)
 
+/** Room kept for the time that an unfinished bar still has to hold, as if quarters were to come. */
+function roomFor(missing: Fraction | null): number {
+  if (!missing) return 0
+  const quarters = Math.floor(4 * toNumber(missing))
+  return quarters * idealWidth(fraction(1, 4)) + idealWidth(subtract(missing, fraction(quarters, 4)))
+}
+
 /** Width between bar lines that the columns wish for; `missing` is the time that an unfinished bar still has to hold. */
 export function bodyWidth(slices: readonly Slice[], missing: Fraction | null): number {
   const room = slices.reduce((width, slice, index) => width + Math.max(slice.ideal, rod(slices, index)), leading(slices))
-  return Math.max(MIN_BODY, room + (missing ? idealWidth(missing) : 0))
+  return Math.max(MIN_BODY, room + roomFor(missing))
 }
 
 export const leastWidth = (slices: readonly Slice[]): number =>
@@ -65,7 +72,7 @@ export const leastWidth = (slices: readonly Slice[]): number =>
 export function columnsOf(slices: readonly Slice[], body: number, missing: Fraction | null): readonly number[] {
   if (!slices.length) return []
   const rods = slices.map((_, index) => rod(slices, index))
-  const rest = missing ? idealWidth(missing) : 0
+  const rest = roomFor(missing)
   const available = body - leading(slices)
   const needed = rods.reduce((sum, each) => sum + each, 0)
   const squeeze = Math.min(1, available / needed)

@@ -219,6 +219,20 @@ describe('the sheet', { timeout: 30_000 }, () => {
     expect(inOrder()).toEqual(shorter.bars.map(bar => bar.id))
   })
 
+  it('makes room at once for notes typed without a pause', () => {
+    const frets = (count: number): string => Array.from({ length: count }, (_, at) => `1/${at % 9}s`).join(' ')
+    const start = parseScore('{4/4} 3/0w | ')
+    const gaps: number[] = []
+    show(start)
+    for (let count = 1; count <= 16; count++) {
+      show(withContentOf(start, parseScore(`{4/4} 3/0w | ${frets(count)}`)))
+      const columns = [...barNodes().get('b2')!.querySelectorAll('text')].filter(text => /^\d$/.test(text.textContent ?? '')).map(text => Number(text.getAttribute('x')))
+      expect(columns).toHaveLength(count)
+      gaps.push(...columns.slice(1).map((x, at) => x - columns[at]!))
+    }
+    expect(Math.min(...gaps)).toBeGreaterThan(12)
+  })
+
   it('draws a long piece only where it is looked at, and all of it for print', () => {
     show(denseScore(24))
     vi.advanceTimersByTime(100)

@@ -67,6 +67,14 @@ export class Layout {
     return drawn?.notation === notation && drawn.width === placed.width && drawn.prefix === placed.prefix ? drawn.geometry : geometryOf(notation, placed.prefix, placed.width)
   }
 
+  /** Have columns come to the bar at `index` for which its width is too small? */
+  isCrampedSince(before: Score, index: number): boolean {
+    const notation = notationAt(this.score!, index)
+    if (notation.slices.length <= notationAt(before, index).slices.length) return false
+    const placed = this.views[this.systemOf(index)]!.system.bars.find(bar => bar.index === index)!
+    return placed.width - placed.prefix < notation.least
+  }
+
   /** Position of the system that holds the bar at `index`. */
   systemOf(index: number): number {
     let [low, high] = [0, this.views.length - 1]

@@ -41,7 +41,10 @@ export class Sheet {
     window.addEventListener('resize', this.lookLater)
   }
 
-  /** Shows a score with its cursor; draws the bars that differ from the one shown before. */
+  /**
+   * Shows a score with its cursor; draws the bars that differ from the one shown before. The system settles a moment after the
+   * last key, or at once where notes that came would run into each other.
+   */
   show(score: Score, selection: Selection | null): void {
     const before = this.layout.score
     this.layout.score = score
@@ -51,7 +54,8 @@ export class Sheet {
     const changed = changedBars(before, score)
     if (changed) this.redraw(before, score, changed)
     else if (!this.append(before, score)) this.rebuild()
-    this.settleLater()
+    if (changed?.some(index => this.layout.isCrampedSince(before, index))) this.settle()
+    else this.settleLater()
     this.drawOverlay()
   }
 
