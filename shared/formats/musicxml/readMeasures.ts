@@ -1,8 +1,9 @@
 import type { XmlElement } from '@rgrove/parse-xml'
-import { ZERO, add, fraction, isLess, max, subtract, type Fraction } from '../../score/fraction'
+import { ZERO, add, fraction, isLess, max, subtract, toNumber, type Fraction } from '../../score/fraction'
 import { midiOf } from '../../score/pitch'
 import type { Key, Meter, Tempo } from '../../score/types'
 import { readKey, readMeter, readStaves, readTransposes, transposeOf, type RawStaff, type Transposes } from './attributes'
+import { durationScale } from './divisions'
 import { durationAt, readNote, type RawNote } from './readNote'
 import { PLAIN_WORDS, type Remarks } from './remarks'
 import { BASE_OF_TYPE, RING_WORDS } from './terms'
@@ -24,7 +25,8 @@ export interface RawMeasure {
   readonly transposes: Transposes
 }
 
-interface PartState { divisions: number, transposes: Transposes }
+/** `scale`: how many times longer durations are than the note shapes. */
+interface PartState { divisions: number, readonly scale: number, transposes: Transposes }
 
 /** A metronome mark of a note and a number; else the bare tempo for players, in quarters. */
 function readTempo(element: XmlElement): Tempo | null {
@@ -54,7 +56,9 @@ const SILENT = new Set(['print', 'listening', 'bookmark', 'link'])
 
 /** All bars of a part, read for what they say and nothing concluded. */
 export function readMeasures(part: XmlElement, remarks: Remarks): RawMeasure[] {
-  const state: PartState = { divisions: 1, transposes: new Map() }
+  const scale = toNumber(durationScale(part))
+  if (scale !== 1) remarks.say('The durations in the file do not fit its note shapes. The shapes were followed.')
+  const state: PartState = { divisions: scale, scale, transposes: new Map() }
   return all(part, 'measure').map((measure, index) => readMeasure(measure, index, state, remarks))
 }
 
@@ -122,7 +126,8 @@ function readOther(element: XmlElement, at: Fraction, bar: Draft, state: PartSta
 }
 
 function readAttributes(attributes: XmlElement, bar: Draft, state: PartState, remarks: Remarks): void {
-  state.divisions = numberAt(attributes, 'divisions') || state.divisions
+  const divisions = numberAt(attributes, 'divisions')
+  if (divisions) state.divisions = divisions * state.scale
   state.transposes = readTransposes(attributes, state.transposes)
   for (const each of all(attributes, 'key')) {
     const key = readKey(each)
