@@ -16,14 +16,15 @@ export function contextOfTarget(target: EventTarget | null, key: string): Comman
   return isPlain && target.closest(CONTROL) ? null : 'desk'
 }
 
-/** The desk's one listener for keys: what a key means is looked up in the registry; keys without a meaning here go on to the browser. */
-export function useKeyboard(): (event: KeyboardEvent) => void {
+/** The desk's one listener for keys: what a key means is looked up in the registry; keys without a meaning here go on to the browser.
+ * @param only ids of the commands that act here; absent: all */
+export function useKeyboard(only?: readonly string[]): (event: KeyboardEvent) => void {
   const editor = useEditorStore()
   const platform = usePlatform()
   return (event) => {
     const context = event.defaultPrevented ? null : contextOfTarget(event.target, event.key)
     const command = context && commandForKey(event, context, undefined, platform.value)
-    if (!command) return
+    if (!command || (only && !only.includes(command.id))) return
     event.preventDefault()
     editor.run(command.id)
   }

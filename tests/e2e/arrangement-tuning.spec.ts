@@ -82,6 +82,10 @@ test('keeping the sound moves what can move, lists the rest, and one undo brings
   await expect(page.getByRole('heading', { name: 'D A D G B D', exact: true })).toBeVisible()
   await isHeld(page, id, `${LOW}: 6/0 6/2 5/0 1/2`)
   await expect(page.getByText('The tuning is changed.')).toBeHidden()
+  await page.keyboard.press('ControlOrMeta+Shift+z')
+  await isHeld(page, id, `${STANDARD}: 6/0 6/0 5/0 1/0`)
+  await page.keyboard.press('ControlOrMeta+z')
+  await isHeld(page, id, `${LOW}: 6/0 6/2 5/0 1/2`)
 })
 
 test('a change of tuning is undone on the desk as well', async ({ page }) => {
