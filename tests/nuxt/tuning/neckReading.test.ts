@@ -29,6 +29,12 @@ describe('a neck that is read by keyboard', () => {
   it('moves as it is drawn for the left-handed, whose nut is at the right', async () =>
     expect(await press(show({ leftHanded: true }), 'ArrowLeft', 'ArrowLeft', 'ArrowRight')).toBe('1/1'))
 
+  it('keeps the number of a string at the outer side of its name', () => {
+    const ends = (wrapper: ReturnType<typeof show>) => wrapper.findAll('.absolute').map(each => each.classes().includes('flex-row-reverse'))
+    expect(ends(show())).toEqual(Array(6).fill(false))
+    expect(ends(show({ leftHanded: true }))).toEqual(Array(6).fill(true))
+  })
+
   it('asks for the place to be heard, and leaves other keys to the browser', async () => {
     const wrapper = show()
     await press(wrapper, 'ArrowDown', 'Enter', 'Tab')
