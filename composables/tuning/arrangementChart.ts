@@ -2,6 +2,10 @@ import { contextOf } from '#shared/score/context'
 import { capoOffset } from '#shared/score/sounding'
 import type { Score } from '#shared/score/types'
 import { tonicOf } from '#shared/tunings/board'
+import { catalogue } from '#shared/tunings/catalogue'
+import { melodyOf } from '#shared/tunings/melody'
+import type { RankingRequest } from '#shared/tunings/rank'
+import { usualSet } from '#shared/tunings/sets'
 import { CHART_KEYS, USUAL_OPTIONS, type ChartOptions } from './chartOptions'
 
 /** What an arrangement says of key, capos and neck, as its chart is made for it. */
@@ -16,4 +20,12 @@ export function arrangementOptions(score: Score): ChartOptions {
     partialFret: partial?.fret ?? 0, partialStrings: partial?.strings ?? [],
     length: head.instrument.scaleLength,
   }
+}
+
+/** What is asked when tunings are ranked for an arrangement's own notes; a problem where it has none. */
+export function rankingOf(score: Score): RankingRequest | { readonly problem: string } {
+  const melody = melodyOf(score)
+  if ('problem' in melody) return melody
+  const { strings, instrument } = score.head
+  return { melody, tunings: catalogue, from: strings, set: usualSet(strings), scaleLength: instrument.scaleLength, frets: instrument.frets, keep: 20, keepOfOne: 2 }
 }

@@ -11,7 +11,7 @@ export interface Suggested {
   readonly letters: string
   readonly capo: number
   readonly setting: string
-  /** Half steps from the melody as typed. */
+  /** Half steps from the melody's own pitch. */
   readonly shift: number
   /** 0 to 100. */
   readonly score: number

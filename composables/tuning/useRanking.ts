@@ -47,3 +47,5 @@ export function useRanking() {
   onScopeDispose(stop)
   return { state, progress, suggestions, seconds: computed(() => milliseconds.value / 1000), start, cancel }
 }
+
+export type Ranking = ReturnType<typeof useRanking>

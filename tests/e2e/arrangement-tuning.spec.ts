@@ -103,6 +103,25 @@ test('a change of tuning is undone on the desk as well', async ({ page }) => {
   await isHeld(page, id, `${STANDARD}: 1/0 2/0`)
 })
 
+test('tunings are ranked for the arrangement’s own notes, and nothing is changed by asking', async ({ page }) => {
+  await signInDemo(page)
+  const id = await openTuning(page, '{4/4} {D} 1/0q 2/0q 3/0q 4/0q ; 6/0w', LOW)
+  await page.getByRole('button', { name: 'Which tuning for this tune?' }).click()
+  await page.getByRole('button', { name: 'Rank the tunings' }).click()
+  await expect(page.getByRole('status').filter({ hasText: /The best \d+, found in/ })).toBeVisible({ timeout: 30_000 })
+  // Every note is an open string as it is tuned: nothing can lie better (common practice).
+  await expect(page.getByRole('listitem').filter({ hasText: 'at its pitch' }).first().getByRole('link')).toHaveText('D A D G B D')
+  expect(await held(page, id)).toBe(`${LOW}: 1/0 2/0 3/0 4/0`)
+})
+
+test('an arrangement without notes has nothing to rank, and says so', async ({ page }) => {
+  await signInDemo(page)
+  await openTuning(page, '{4/4} ^', LOW)
+  await page.getByRole('button', { name: 'Which tuning for this tune?' }).click()
+  await page.getByRole('button', { name: 'Rank the tunings' }).click()
+  await expect(page.getByRole('alert')).toContainText('has no notes yet')
+})
+
 test('what can’t be read or done is said, with the place', async ({ page }) => {
   await signInDemo(page)
   const id = await openTuning(page, '7/0q', 'B1 E2 A2 D3 G3 B3 E4')

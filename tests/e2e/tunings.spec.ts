@@ -175,7 +175,7 @@ test('tunings are ranked for a tune; it can be cancelled, and mistakes are named
   await page.getByRole('button', { name: 'Rank the tunings' }).click()
   await expect(page.getByText(/The best \d+, found in/)).toBeVisible()
   const best = page.getByRole('listitem').filter({ hasText: '100 percent of the melody lies on open strings: G3, B3 and D4' })
-  await expect(best.first()).toContainText('G major, at the pitch typed')
+  await expect(best.first()).toContainText('G major, at its pitch')
   await best.first().getByRole('link').click()
   await expect(page).toHaveURL(/\/tunings\/[cd]2-g2-d3-g3-b3-d4/)
 })
