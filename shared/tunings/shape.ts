@@ -27,7 +27,7 @@ export interface Shape {
 export const MOST_FINGERS = 4
 /** Weights (ours): each fretted note, finger and string left out; a barre; another bass than the root; position and span;
  * a third sounding three times. */
-export const SHAPE_COST = { fretted: 1, finger: 0.8, muted: 1.5, mutedInside: 1.5, barre: 1, inversion: 2.5, missing: 1.5, position: 0.4, spanMm: 40, thickThird: 2 } as const
+export const SHAPE_COST = { fretted: 1, finger: 0.8, muted: 1.9, mutedInside: 1.5, barre: 1, inversion: 3, missing: 1.5, position: 0.4, spanMm: 40, thickThird: 2 } as const
 
 /** Millimetres between two frets counted from the nut. */
 export const spanOf = (board: Board, from: number, to: number): number => board.scaleLength * (fretDistance(to) - fretDistance(from))
@@ -68,7 +68,8 @@ function survey(board: Board, tones: readonly number[], placed: readonly (number
     if (fret < lowest) [lowest, atLowest, low] = [fret, 0, index]
     if (fret === lowest) [atLowest, high] = [atLowest + 1, index]
   }
-  const isBarre = atLowest > 1 && isClear(placed, low, high, lowest)
+  // Two strings take a finger each while there are fingers enough.
+  const isBarre = (atLowest > 2 || (atLowest > 1 && held > MOST_FINGERS)) && isClear(placed, low, high, lowest)
   return {
     times, sounding, inside: last - first + 1 - sounding, bass, held, lowest, highest,
     barre: isBarre ? [low, high] : null, fingers: isBarre ? held - atLowest + 1 : held,

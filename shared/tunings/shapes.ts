@@ -37,9 +37,10 @@ function windowEnd(board: Board, low: number, reach: number): number {
   return Math.min(high, board.lastFret, low + 11)
 }
 
-/** Two shapes that differ only in strings left out are one to a player. */
-const isVariant = (a: Shape, b: Shape): boolean =>
-  a.frets.every((fret, index) => fret === null || b.frets[index] === null || fret === b.frets[index])
+const isPartOf = (a: Shape, b: Shape): boolean => a.frets.every((fret, index) => fret === null || fret === b.frets[index])
+
+/** A shape and the same with more strings left out are one to a player; two that merely share some strings are not. */
+const isVariant = (a: Shape, b: Shape): boolean => isPartOf(a, b) || isPartOf(b, a)
 
 /** Tones that must sound: all, save the fifth of a seventh chord. */
 const requiredOf = (tones: readonly number[]): number => ((1 << tones.length) - 1) & ~(tones.length > 3 ? 1 << 2 : 0)
@@ -82,10 +83,10 @@ function searchWindow(board: Board, chord: ChordWish, low: number, high: number,
   const spanCost = Array.from({ length: Math.max(1, high - low + 1) }, (_, step) => spanOf(board, low, low + step) / SHAPE_COST.spanMm)
   const frets: (number | null)[] = board.opens.map(() => null)
 
-  const down = (index: number, tones: number, above: number, top: number, atLow: boolean, cost: number): void => {
+  const down = (index: number, tones: number, above: number, top: number, atLow: number, cost: number): void => {
     if (above + (low ? 1 : 0) > MOST_FINGERS || cost + spanCost[top]! + (atLeast[index] ?? 0) >= best.bar) return
     if (index < 0) {
-      const shape = (tones & required) === required && (atLow || low === 0) ? judge(board, chord, frets, best.bar) : null
+      const shape = (tones & required) === required && (atLow > 0 || low === 0) ? judge(board, chord, frets, best.bar) : null
       if (shape) best.add(shape)
       return
     }
@@ -93,11 +94,14 @@ function searchWindow(board: Board, chord: ChordWish, low: number, high: number,
     for (const each of choices[index]!) {
       frets[index] = each.fret
       const isHeld = each.fret !== null && each.fret > board.stops[index]!
-      down(index - 1, tones | each.tones, above + each.above, isHeld ? Math.max(top, each.fret! - low) : top, atLow || (isHeld && each.fret === low), cost + each.cost)
+      const isLow = isHeld && each.fret === low
+      // A second note at the lowest fret takes a finger or makes a barre.
+      const second = isLow && atLow === 1 ? Math.min(SHAPE_COST.finger, SHAPE_COST.barre) : 0
+      down(index - 1, tones | each.tones, above + each.above, isHeld ? Math.max(top, each.fret! - low) : top, atLow + (isLow ? 1 : 0), cost + each.cost + second)
     }
     frets[index] = null
   }
-  down(board.opens.length - 1, 0, 0, 0, false, base)
+  down(board.opens.length - 1, 0, 0, 0, 0, base)
 }
 
 /**

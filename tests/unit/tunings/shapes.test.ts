@@ -16,12 +16,17 @@ const texts = (shapes: readonly Shape[]) => shapes.map(text)
 
 describe('the shapes of first-position chords in standard tuning', () => {
   // The shapes that every method for beginners shows (common practice).
-  it.each([['C', 'x32010'], ['Em', '022000'], ['Am', 'x02210'], ['F', '133211'], ['G7', '320001']])('%s is found as %s', (symbol, shape) =>
+  it.each([['C', 'x32010'], ['Em', '022000'], ['Am', 'x02210'], ['F', '133211'], ['G7', '320001'], ['G', '320003'], ['Dm', 'xx0231']])('%s is found as %s', (symbol, shape) =>
     expect(texts(findShapes(STANDARD, chord(symbol)))).toContain(shape))
+  it.each([['D', 'xx0232'], ['A', 'x02220'], ['E', '022100'], ['Bm', 'x20432']])('%s is found as %s', (symbol, shape) =>
+    expect(texts(findShapes(STANDARD, chord(symbol, { fifths: symbol === 'Bm' ? 2 : 3, mode: 'major' })))).toContain(shape))
 
   it('fingers them as the methods do', () => {
     const fingers = (symbol: string, shape: string) => [...findShapes(STANDARD, chord(symbol)).find(each => text(each) === shape)!.fingers].reverse().join('')
     expect(fingers('C', 'x32010')).toBe('032010')
+    // Two strings at one fret are two fingers, not a barre.
+    expect(fingers('Em', '022000')).toBe('012000')
+    expect(fingers('Dm', 'xx0231')).toBe('000231')
     expect(fingers('F', '133211')).toBe('134211')
     expect(findShapes(STANDARD, chord('F')).find(each => text(each) === '133211')!.barre).toEqual({ fret: 1, fromString: 6, toString: 1 })
   })
