@@ -1,4 +1,4 @@
-import type { Board } from './board'
+import { chromaOf, type Board } from './board'
 import type { ScalePlace } from './scale'
 import { spanOf } from './shape'
 
@@ -24,6 +24,12 @@ export function byPitch(places: readonly ScalePlace[]): readonly (readonly Scale
   return pitches.map(midi => places.filter(each => each.midi === midi))
 }
 
+/** Whether no pitch of the scale lies between two of its pitches: strings far apart leave gaps that are no steps. */
+export function isStep(places: readonly ScalePlace[], low: number, high: number): boolean {
+  const chromas = new Set(places.map(({ midi }) => chromaOf(midi)))
+  return !Array.from({ length: Math.min(12, high - low - 1) }, (_, index) => low + 1 + index).some(midi => chromas.has(chromaOf(midi)))
+}
+
 /**
  * All neighbours, from the lowest pitch up; of one step those with more open strings first, then the narrower.
  * @param places of a scale on this board; leave out frets that should not be used
@@ -31,7 +37,7 @@ export function byPitch(places: readonly ScalePlace[]): readonly (readonly Scale
  */
 export function neighbours(board: Board, places: readonly ScalePlace[], reach = 115): readonly Neighbours[] {
   const steps = byPitch(places)
-  return steps.slice(1).flatMap((highs, index) => steps[index]!.flatMap(low => highs.flatMap((high): Neighbours[] => {
+  return steps.slice(1).flatMap((highs, index) => (isStep(places, steps[index]![0]!.midi, highs[0]!.midi) ? steps[index]! : []).flatMap(low => highs.flatMap((high): Neighbours[] => {
     const span = spanBetweenPlaces(board, low, high)
     const open = ((low.fret === 0 ? 1 : 0) + (high.fret === 0 ? 1 : 0)) as 0 | 1 | 2
     return low.string === high.string || span > reach ? [] : [{ low, high, span, open }]

@@ -1,5 +1,5 @@
 import type { Board } from './board'
-import { byPitch, spanBetweenPlaces } from './neighbours'
+import { byPitch, isStep, spanBetweenPlaces } from './neighbours'
 import type { ScalePlace } from './scale'
 
 /** A note of a run and how long it can ring, counted in notes of the run. */
@@ -25,10 +25,12 @@ const stepCost = (board: Board, before: ScalePlace | undefined, last: ScalePlace
   + spanBetweenPlaces(board, last, next) / COST.shiftMm
 
 /** Steps of a scale laid so that no two notes in turn share a string; at each pitch the cheapest path to each pair of last two places. */
-function paths(board: Board, pitches: readonly (readonly ScalePlace[])[], reach: number): ScalePlace[] {
+function paths(board: Board, scale: readonly ScalePlace[], reach: number): ScalePlace[] {
   let longest: Path = { cost: 0, places: [] }
   let open: Path[] = []
-  for (const places of pitches) {
+  for (const places of byPitch(scale)) {
+    const before = open[0]?.places.at(-1)
+    if (before && !isStep(scale, before.midi, places[0]!.midi)) open = []
     const started = places.map((place): Path => ({ cost: place.fret ? COST.fretted : 0, places: [place] }))
     const grown = open.flatMap(path => places.flatMap((place): Path[] => {
       const last = path.places.at(-1)!
@@ -71,7 +73,7 @@ function rings(board: Board, places: readonly ScalePlace[], reach: number): RunN
  * @param reach millimetres that a hand opens
  */
 export function longestRun(board: Board, places: readonly ScalePlace[], reach = 115): Run {
-  const up = paths(board, byPitch(places), reach)
+  const up = paths(board, places, reach)
   return { up: rings(board, up, reach), down: rings(board, [...up].reverse(), reach) }
 }
 

@@ -34,6 +34,15 @@ describe('neighbours in D A D G A D', () => {
     expect(new Set(pairs).size).toBe(pairs.length)
   })
 
+  it('and runs take no gap between strings far apart for a step', () => {
+    // A0 and C♯1 reach C♯2 at fret 12 at most; the next string begins at A4.
+    const apart = board('A0 C#1 A4 E5')
+    const scale = placesOf(apart, scaleDegrees('A', 'major')!, 12)
+    expect(neighbours(apart, scale).filter(({ low, high }) => high.midi - low.midi > 2)).toEqual([])
+    const run = longestRun(apart, scale).up.map(({ place }) => place.midi)
+    expect(run.slice(1).every((midi, index) => midi - run[index]! <= 2)).toBe(true)
+  })
+
   it('leave out what no hand reaches', () => {
     // F♯ on string 6 at 4 and G on string 4 at 5 lie together; F♯ on string 3 at 11 and G on string 4 at 5 do not.
     expect(pairs).toContain('5/4 4/0')
