@@ -3,6 +3,7 @@ import type { Key } from '../score/types'
 import { boardOf, chromaOf, keyOf, movedKey, tonicOf, type Neck } from './board'
 import { degreeOf, nameChord, type ChordName } from './chords'
 import { spellTogether } from './spelling'
+import { stringsWord } from './words'
 
 export interface Barre {
   /** Counted from the full capo, as notes are written; 0: the open strings. */
@@ -40,4 +41,17 @@ export function homeKey(neck: Neck): Key {
   const key = keyOf(tonic, has(3) && !has(4) ? 'minor' : 'major')
   const isFlat = spellTogether(opens).some(pitch => pitch.alter < 0)
   return key.fifths === 6 && isFlat ? { ...key, fifths: -6 } : key
+}
+
+/** Barres that matter most, on the degrees of a major scale (common practice), where there is no room for all. */
+export const MAIN_BARRES: readonly number[] = [0, 2, 4, 5, 7, 9, 12]
+
+/** "Capo at fret 2. Frets count from it, chords as they sound."; '' without a capo. A partial capo leaves other strings open from the nut
+ * or the full capo, so that barres count from there. */
+export function capoSentence(neck: Neck): string {
+  if (neck.capos.length === 0) return ''
+  const isPartial = (covered: readonly number[] | undefined): covered is readonly number[] => covered !== undefined && covered.length < neck.strings.length
+  const named = neck.capos.map(({ fret, strings }) => (isPartial(strings) ? `Partial capo at fret ${fret} on ${stringsWord(strings)}.` : `Capo at fret ${fret}.`))
+  const from = capoOffset(neck) === 0 ? 'the nut' : neck.capos.length === 1 ? 'it' : 'the full capo'
+  return `${named.join(' ')} Frets count from ${from}, chords as they sound.`
 }

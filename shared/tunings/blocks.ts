@@ -30,8 +30,8 @@ function movesAt(known: readonly number[], wanted: readonly number[], shift: num
   return groups
 }
 
-/** Runs of neighbours: [1, 2, 5] → [1, 2], [5]. */
-const runs = (strings: readonly number[]): number[][] => strings.reduce<number[][]>((all, string) => {
+/** Neighbouring strings together, lowest number first: [5, 1, 2] → [1, 2], [5]. */
+export const neighbourRuns = (strings: readonly number[]): number[][] => strings.toSorted((a, b) => a - b).reduce<number[][]>((all, string) => {
   const last = all.at(-1)
   return last && last.at(-1) === string - 1 ? [...all.slice(0, -1), [...last, string]] : [...all, [string]]
 }, [])
@@ -46,7 +46,7 @@ export function shapeBlocks(known: readonly OpenString[], wanted: readonly OpenS
   const [from, to] = [known, wanted].map(strings => strings.map(({ pitch }) => midiOfText(pitch)))
   const shifts = Array.from({ length: 2 * Math.max(from!.length, to!.length) - 1 }, (_, index) => index - from!.length + 1)
   return shifts.flatMap(shift => [...movesAt(from!, to!, shift)].flatMap(([halfSteps, strings]) =>
-    (shift === 0 ? [strings].filter(each => each.length > 1) : runs(strings).filter(each => each.length > 2))
+    (shift === 0 ? [strings].filter(each => each.length > 1) : neighbourRuns(strings).filter(each => each.length > 2))
       .map(own => ({ from: own, to: own.map(string => string + shift), ...asFrets(halfSteps) }))))
     .sort((a, b) => b.from.length - a.from.length || distance(a) - distance(b))
 }

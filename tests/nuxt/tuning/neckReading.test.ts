@@ -41,6 +41,17 @@ describe('a neck that is read by keyboard', () => {
     expect(wrapper.emitted('hear')).toEqual([[{ string: 2, fret: 0 }]])
   })
 
+  it('reads an open string that is pointed at', async () => {
+    const wrapper = show()
+    await wrapper.findAll('.absolute')[3]!.find('.rounded-full').trigger('pointerenter')
+    expect(wrapper.find('[role=status]').text()).toBe('4/0')
+  })
+
+  it('draws a partial capo only over the strings it covers', () => {
+    const pieces = (strings?: number[]) => show({ neck: { ...neck, capos: [{ fret: 2, strings }] } }).findAll('line[stroke-width="9"]').length
+    expect([pieces(), pieces([3, 4, 5]), pieces([1, 3, 4, 6])]).toEqual([1, 1, 3])
+  })
+
   it('shows tonics in copper, other open strings in verdigris', () => {
     const wrapper = show()
     expect(wrapper.find('.bg-copper').text()).toBe('D')

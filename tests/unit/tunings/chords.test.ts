@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest'
 import { STEEL_STRING_GUITAR } from '../../../shared/score/create'
 import type { Capo, Key } from '../../../shared/score/types'
 import { boardOf, keyOf, movedKey, tonicOf } from '../../../shared/tunings/board'
-import { homeKey, straightBarres } from '../../../shared/tunings/barres'
+import { capoSentence, homeKey, straightBarres } from '../../../shared/tunings/barres'
 import { nameChord } from '../../../shared/tunings/chords'
 import { chordsOfKey } from '../../../shared/tunings/keyChords'
 import { chromaOfNote } from '../../../shared/tunings/notes'
@@ -48,6 +48,14 @@ describe('straight barres', () => {
     expect(straightBarres(partial, C)[2]!.midis).toEqual([66, 61, 57, 52, 47, 42])
     expect(straightBarres(partial, C)[0]!.sound!.symbol).toBe('Esus4')
   })
+
+  // A capo on some strings leaves the barring finger to count from the nut; a full one takes its place (common practice).
+  it.each<[Capo[], string]>([
+    [[], ''], [[{ fret: 2 }], 'Capo at fret 2. Frets count from it, chords as they sound.'],
+    [[{ fret: 2, strings: [3, 4, 5] }], 'Partial capo at fret 2 on strings 3, 4 and 5. Frets count from the nut, chords as they sound.'],
+    [[{ fret: 1 }, { fret: 3, strings: [2] }], 'Capo at fret 1. Partial capo at fret 3 on string 2. Frets count from the full capo, chords as they sound.'],
+  ])('say where their frets count from: %j', (capos, sentence) =>
+    expect(capoSentence(neck('E2 A2 D3 G3 B3 E4', capos))).toBe(sentence))
 
   it('start a short string where it starts', () => {
     const banjo = { strings: [{ pitch: 'D4' }, { pitch: 'B3' }, { pitch: 'G3' }, { pitch: 'D3' }, { pitch: 'G4', from: 5 }], capos: [], instrument: STEEL_STRING_GUITAR }
